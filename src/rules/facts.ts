@@ -1,0 +1,45 @@
+// types; the facts vocabulary is read from these analyses
+
+import type { Expansion } from '../limit/expansion.ts';
+import type { Matching } from '../limit/matching.ts';
+import type { Case } from '../model/case.ts';
+import type { Claim } from '../model/claim.ts';
+import type { ChargeEnergy, Configuration } from '../rough/profile.ts';
+import type { ShiftAnalysis } from '../symmetry/family.ts';
+import type { PointGroupAnalysis } from '../symmetry/pointGroup.ts';
+import type { WitnessRecord } from '../witness/witness.ts';
+
+export type Verdict = 'holds' | 'fails' | 'undecided';
+
+export interface ClaimVerdict {
+  readonly claim: Claim;
+  readonly verdict: Verdict;
+  /** What the tool found, in one or two sentences with the formula. */
+  readonly found: string;
+}
+
+/** Everything the analyses produced for one case. */
+export interface Analyses {
+  readonly case: Case;
+  readonly expansion: Expansion;
+  /** Undefined when the case has no proposal and none could be made. */
+  readonly matching: Matching | undefined;
+  readonly shifts: ShiftAnalysis;
+  readonly pointGroup: PointGroupAnalysis;
+  readonly configurations: readonly Configuration[];
+  readonly charges: readonly ChargeEnergy[];
+  readonly witness: readonly WitnessRecord[];
+  readonly claims: readonly ClaimVerdict[];
+  /** Sign of the quadratic form: `indefinite` when a quadratic coefficient has the wrong sign. */
+  readonly quadraticForm: 'positive' | 'indefinite' | 'unknown';
+}
+
+/** What a rule says about a case. */
+export interface Finding {
+  readonly rule: string;
+  readonly level: 'fault' | 'caution' | 'note';
+  readonly statement: string;
+  readonly why: string;
+  readonly evidence: string;
+  readonly mend: string;
+}
