@@ -1,7 +1,16 @@
-// types of the expansion; see expandAction
+// The gradient expansion of the parent. A term F(u) with u = Σ_j D_j φ_j is expanded about the centre of the support of
+// its stencils, u = Σ_α m_α a^{|α|} ∂^α φ, composed with the Taylor series of F, cut by the number of derivatives and
+// brought to normal form modulo total derivatives. Every derivative along an axis carries that axis's spacing, so the
+// order of a monomial is its multi-degree; the sum over cells becomes an integral divided by the cell volume.
 
-import type { Coefficient } from '../exact/coefficient.ts';
-import type { Density, JetMonomial, JetSpace } from './jets.ts';
+import { Coefficient, type CoefficientTerm } from '../exact/coefficient.ts';
+import { Rational, rational } from '../exact/rational.ts';
+import type { ActionTerm, Expression, LinearForm } from '../model/action.ts';
+import type { Case } from '../model/case.ts';
+import type { Lattice } from '../model/geometry.ts';
+import { addTerm, Density, type JetMonomial, JetSpace } from './jets.ts';
+import { normalForm } from './normalForm.ts';
+import { composeDensity, type FormSeries, type Truncation } from './series.ts';
 
 /** Powers of each spacing beyond the leading order, e.g. {a: 2, b: 0}. */
 export type MultiOrder = ReadonlyMap<string, number>;
@@ -28,19 +37,408 @@ export interface TermExpansion {
   readonly raw: Density;
   /** Normal form of `raw` modulo total derivatives. */
   readonly normal: Density;
-  /** Absolute powers of the spacings at this term's leading order. */
-  readonly leading: MultiOrder;
+  /** Absolute powers of the spacings at this term's leading order; undefined when the term vanishes. */
+  readonly leading: MultiOrder | undefined;
   /** Powers of the spacings from which relative orders of this term are counted. */
   readonly base: MultiOrder;
 }
 
 export interface Expansion {
   readonly space: JetSpace;
-  /** Sorted: leading first, then by total order, then lexicographically. */
+  /** Sorted: by total order, then lexicographically in the order of the limits. */
   readonly orders: readonly ExpansionOrder[];
   readonly byTerm: readonly TermExpansion[];
   /** Highest total relative order that is complete. */
   readonly through: number;
-  /** Largest number of fields kept, when undifferentiated fields made a cut necessary. */
+  /** Largest number of fields kept, when functions of undifferentiated fields made a cut necessary. */
   readonly fieldCut: number | undefined;
+}
+
+/** A term whose first this-many orders are all total derivatives is taken to vanish. */
+const EMPTY_ORDERS = 8;
+
+/** Π spacings over all axes: the volume of a space-time cell. */
+export function cellVolume(lattice: Lattice): Coefficient {
+  return lattice.axes.reduce((v, axis) => v.mul(Coefficient.symbol(axis.spacing)), Coefficient.one);
+}
+
+/** Centre of the bounding box of the supports of all linear forms in an expression, in lattice units. */
+export function supportCentre(expression: Expression, dimension: number): Rational[] {
+  const low = new Array<number>(dimension).fill(Number.POSITIVE_INFINITY);
+  const high = new Array<number>(dimension).fill(Number.NEGATIVE_INFINITY);
+  visitForms(expression, (form) => {
+    for (const stencil of form.values())
+      for (const { exponents } of stencil.terms)
+        for (const [k, e] of exponents.entries()) {
+          low[k] = Math.min(low[k]!, e);
+          high[k] = Math.max(high[k]!, e);
+        }
+  });
+  return low.map((l, k) => (Number.isFinite(l) ? rational(l + high[k]!, 2) : Rational.zero));
+}
+
+function visitForms(expression: Expression, visit: (form: LinearForm) => void): void {
+  switch (expression.kind) {
+    case 'constant':
+      return;
+    case 'linear':
+      visit(expression.form);
+      return;
+    case 'sum':
+      for (const t of expression.terms) visitForms(t, visit);
+      return;
+    case 'product':
+      for (const f of expression.factors) visitForms(f, visit);
+      return;
+    case 'power':
+      visitForms(expression.base, visit);
+      return;
+    case 'function':
+      visitForms(expression.argument, visit);
+  }
+}
+
+/** The summands of an expression, each as a constant weight times a factor to be expanded about its own centre. */
+export function summands(expression: Expression): { weight: Coefficient; factor: Expression }[] {
+  if (expression.kind === 'sum') return expression.terms.flatMap(summands);
+  if (expression.kind !== 'product') return [{ weight: Coefficient.one, factor: expression }];
+  let weight = Coefficient.one;
+  const factors: Expression[] = [];
+  for (const f of expression.factors) {
+    if (f.kind === 'constant') weight = weight.mul(f.value);
+    else factors.push(f);
+  }
+  if (factors.length === 0) return [{ weight, factor: { kind: 'constant', value: Coefficient.one } }];
+  if (factors.length > 1) return [{ weight, factor: { kind: 'product', factors } }];
+  return summands(factors[0]!).map((t) => ({ weight: t.weight.mul(weight), factor: t.factor }));
+}
+
+/** True when some function of the expression acts on an undifferentiated field, so that no order in the spacings bounds
+ *  the number of fields. `meanWeight` gives the value of a linear form on a constant field. */
+export function needsFieldCut(expression: Expression, keepsConstant: (form: LinearForm) => boolean): boolean {
+  switch (expression.kind) {
+    case 'constant':
+    case 'linear':
+      return false;
+    case 'sum':
+      return expression.terms.some((t) => needsFieldCut(t, keepsConstant));
+    case 'product':
+      return expression.factors.some((f) => needsFieldCut(f, keepsConstant));
+    case 'power':
+      return expression.exponent < 0
+        ? anyForm(expression.base, keepsConstant)
+        : needsFieldCut(expression.base, keepsConstant);
+    case 'function':
+      return anyForm(expression.argument, keepsConstant);
+  }
+}
+
+function anyForm(expression: Expression, test: (form: LinearForm) => boolean): boolean {
+  let found = false;
+  visitForms(expression, (form) => {
+    found ||= test(form);
+  });
+  return found;
+}
+
+/** Multi-indices with |α| ≤ order that vanish along the axes outside `extended`. */
+function multiIndices(extended: readonly boolean[], order: number): number[][] {
+  let indices: number[][] = [[]];
+  for (const isExtended of extended)
+    indices = indices.flatMap((alpha) => {
+      const left = isExtended ? order - alpha.reduce((x, y) => x + y, 0) : 0;
+      return Array.from({ length: left + 1 }, (_, k) => [...alpha, k]);
+    });
+  return indices;
+}
+
+/** Taylor moments of the stencils of a linear form about a centre, as a series in jets (undivided: no spacings).
+ *  The constant background adds a field-independent part. */
+function latticeForm(
+  space: JetSpace,
+  centre: readonly Rational[],
+  background: ReadonlyMap<string, Rational>,
+): FormSeries {
+  return (form, order) => {
+    const out = new Map<JetMonomial, Coefficient>();
+    for (const [name, stencil] of form) {
+      const field = space.fields.indexOf(name);
+      const offsets = stencil.terms.map(({ exponents }) => exponents.map((e, k) => rational(e).sub(centre[k]!)));
+      const extended = centre.map((_, k) => offsets.some((v) => !v[k]!.isZero));
+      const powers = offsets.map((v) => v.map((x, k) => dividedPowers(x, extended[k] ? order : 0)));
+      for (const alpha of multiIndices(extended, order)) {
+        let moment = Coefficient.zero;
+        for (const [i, { weight }] of stencil.terms.entries()) {
+          let factor = Rational.one;
+          for (const [k, n] of alpha.entries()) if (n > 0) factor = factor.mul(powers[i]![k]![n]!);
+          if (!factor.isZero) moment = moment.add(weight.scale(factor));
+        }
+        if (!moment.isZero) addTerm(out, space.monomial([{ field, derivative: alpha }]), moment);
+      }
+      const mean = background.get(name);
+      if (mean) {
+        const total = stencil.terms.reduce((s, t) => s.add(t.weight), Coefficient.zero);
+        addTerm(out, '', total.scale(mean));
+      }
+    }
+    return out;
+  };
+}
+
+/** 1, v, v²/2!, …, v^n/n!. */
+function dividedPowers(v: Rational, n: number): Rational[] {
+  const out = [Rational.one];
+  for (let k = 1; k <= n; k++) out.push(out[k - 1]!.mul(v).div(rational(k)));
+  return out;
+}
+
+/** A differential operator as it stands. */
+function continuumForm(space: JetSpace, background: ReadonlyMap<string, Rational>): FormSeries {
+  return (form, order) => {
+    const out = new Map<JetMonomial, Coefficient>();
+    for (const [name, operator] of form) {
+      const field = space.fields.indexOf(name);
+      const mean = background.get(name);
+      for (const { exponents, weight } of operator.terms) {
+        const degree = exponents.reduce((x, y) => x + y, 0);
+        if (degree <= order) addTerm(out, space.monomial([{ field, derivative: exponents }]), weight);
+        if (mean && degree === 0) addTerm(out, '', weight.scale(mean));
+      }
+    }
+    return out;
+  };
+}
+
+const keepsConstantOnLattice = (form: LinearForm): boolean =>
+  [...form.values()].some((s) => !s.terms.reduce((sum, t) => sum.add(t.weight), Coefficient.zero).isZero);
+
+const keepsConstantInContinuum = (form: LinearForm): boolean =>
+  [...form.values()].some((s) => s.terms.some((t) => t.exponents.every((e) => e === 0)));
+
+/** Density of a continuum Lagrangian, in its own parameters, not in normal form.
+ *  Throws LimitError and ExpansionPointError. */
+export function continuumDensity(
+  lagrangian: Expression,
+  space: JetSpace,
+  cut: Truncation,
+  background: ReadonlyMap<string, Rational> = new Map(),
+): Density {
+  return composeDensity(lagrangian, cut, continuumForm(space, background), space);
+}
+
+/** Lattice density of one term per cell, undivided (no spacings), each summand about the centre of its own support. */
+function undividedDensity(
+  expression: Expression,
+  space: JetSpace,
+  cut: Truncation,
+  background: ReadonlyMap<string, Rational>,
+): Density {
+  let sum = Density.zero(space);
+  for (const { weight, factor } of summands(expression)) {
+    const centre = supportCentre(factor, space.axes.length);
+    sum = sum.add(composeDensity(factor, cut, latticeForm(space, centre, background), space).scale(weight));
+  }
+  return sum;
+}
+
+/** Powers of the spacings that the derivatives of a monomial carry. */
+export function derivativeOrder(space: JetSpace, lattice: Lattice, monomial: JetMonomial): Map<string, number> {
+  const out = new Map(lattice.limits.map((s) => [s, 0]));
+  for (const [k, n] of space.degree(monomial).entries()) {
+    const { spacing } = lattice.axes[k]!;
+    out.set(spacing, out.get(spacing)! + n);
+  }
+  return out;
+}
+
+const totalOf = (order: MultiOrder): number => [...order.values()].reduce((x, y) => x + y, 0);
+
+/** Powers of the spacings in one term of an absolute coefficient, with the cell volume multiplied back: for a parent whose
+ *  parameters carry no spacings this is the number of derivatives along the axes of each spacing. */
+export function spacingOrder(term: CoefficientTerm, lattice: Lattice): Map<string, number> {
+  const out = new Map(lattice.limits.map((s) => [s, 0]));
+  for (const { spacing } of lattice.axes) out.set(spacing, out.get(spacing)! + 1);
+  for (const [generator, exponent] of term.powers) {
+    const power = out.get(generator);
+    if (power !== undefined) out.set(generator, power + exponent.toNumber());
+  }
+  return out;
+}
+
+/** Least order of a density with absolute coefficients, and the monomials that have it. */
+function leadingPart(
+  density: Density,
+  lattice: Lattice,
+): { order: MultiOrder; monomials: JetMonomial[] } | undefined {
+  let best: { order: MultiOrder; monomials: JetMonomial[] } | undefined;
+  for (const [m, c] of density.terms)
+    for (const term of c.terms) {
+      const order = spacingOrder(term, lattice);
+      const comparison = best ? compareOrders(order, best.order) : -1;
+      if (comparison < 0) best = { order, monomials: [m] };
+      else if (comparison === 0) best!.monomials.push(m);
+    }
+  return best;
+}
+
+function compareOrders(x: MultiOrder, y: MultiOrder): number {
+  const byTotal = totalOf(x) - totalOf(y);
+  if (byTotal !== 0) return byTotal;
+  for (const [spacing, n] of x) if (n !== y.get(spacing)) return n - y.get(spacing)!;
+  return 0;
+}
+
+interface ExpandedTerm {
+  readonly name: string;
+  readonly raw: Density;
+  readonly normal: Density;
+  readonly leading: { readonly order: MultiOrder; readonly monomials: readonly JetMonomial[] } | undefined;
+}
+
+/** Expands one term: first at rising order until something survives modulo total derivatives, then through the orders
+ *  asked for beyond that. */
+function expandTerm(term: ActionTerm, space: JetSpace, theCase: Case, fields: number): ExpandedTerm {
+  const { lattice } = theCase;
+  const { beyondLeading, background } = theCase.expand;
+  const at = (order: number): { undivided: Density; normal: Density } => {
+    const undivided = undividedDensity(term.expression, space, { order, fields }, background);
+    return { undivided, normal: normalForm(undivided) };
+  };
+  let lowest: number | undefined;
+  for (let order = 0; lowest === undefined && order <= EMPTY_ORDERS; order++)
+    lowest = fewestDerivatives(at(order).normal);
+  const { undivided, normal } = at((lowest ?? EMPTY_ORDERS) + beyondLeading);
+  const absolute = withSpacings(normal, lattice);
+  return {
+    name: term.name,
+    raw: withSpacings(undivided, lattice),
+    normal: absolute,
+    leading: leadingPart(absolute, lattice),
+  };
+}
+
+function fewestDerivatives(density: Density): number | undefined {
+  let fewest: number | undefined;
+  for (const m of density.terms.keys()) {
+    const n = density.space.degree(m).reduce((x, y) => x + y, 0);
+    fewest = fewest === undefined ? n : Math.min(fewest, n);
+  }
+  return fewest;
+}
+
+/** Order from which a term's corrections are counted: its own leading order when `isLeading` accepts one of its leading
+ *  monomials, else the leading order of an accepted term, the closest one that is not above in any spacing if possible. */
+function baseOrder(
+  term: ExpandedTerm,
+  all: readonly ExpandedTerm[],
+  isAccepted: (t: ExpandedTerm) => boolean,
+): MultiOrder | undefined {
+  const own = term.leading?.order;
+  if (!own) return undefined;
+  if (isAccepted(term)) return own;
+  const others = all.filter((t) => t !== term && t.leading && isAccepted(t)).map((t) => t.leading!.order);
+  const cost = (base: MultiOrder): number => {
+    const differences = [...own].map(([s, n]) => n - base.get(s)!);
+    const below = differences.filter((d) => d < 0).reduce((x, y) => x - y, 0);
+    return below * 1000 + Math.abs(totalOf(own) - totalOf(base));
+  };
+  return others.sort((x, y) => cost(x) - cost(y))[0] ?? own;
+}
+
+/** Expansion of the parent action as a Lagrangian density (sum over cells → ∫ / cell volume).
+ *  @param isLeading says whether a monomial belongs to the proposal; by default every term counts from its own leading
+ *  order. Throws LimitError (blocks, terms) and ExpansionPointError. */
+export function expandAction(theCase: Case, isLeading: (space: JetSpace) => (m: JetMonomial) => boolean = () => () => true): Expansion {
+  const { lattice } = theCase;
+  const space = jetSpaceOf(theCase);
+  const cutNeeded = theCase.parent.terms.some((t) => needsFieldCut(t.expression, keepsConstantOnLattice));
+  const fieldCut = cutNeeded ? fieldLimit(theCase) : theCase.expand.fields;
+  const fields = fieldCut ?? Number.POSITIVE_INFINITY;
+  const terms = theCase.parent.terms.map((t) => expandTerm(t, space, theCase, fields));
+  const inProposal = isLeading(space);
+  const accepted = (t: ExpandedTerm): boolean => t.leading?.monomials.some(inProposal) ?? false;
+  const byTerm = terms.map((t): TermExpansion => ({
+    name: t.name,
+    raw: t.raw,
+    normal: t.normal,
+    leading: t.leading?.order,
+    base: baseOrder(t, terms, accepted) ?? new Map(lattice.limits.map((s) => [s, 0])),
+  }));
+  const through = theCase.expand.beyondLeading;
+  return { space, orders: collectOrders(byTerm, space, lattice, through), byTerm, through, fieldCut };
+}
+
+/** Jets of the fields of a case over its axes. */
+export function jetSpaceOf(theCase: Case): JetSpace {
+  return new JetSpace(
+    theCase.fields.map((f) => f.name),
+    theCase.lattice.axes.map((x) => x.name),
+  );
+}
+
+/** Number of field factors kept where functions of undifferentiated fields need a cut. */
+export function fieldLimit(theCase: Case): number {
+  return theCase.expand.fields ?? Math.max(4, theCase.expand.beyondLeading + 2);
+}
+
+/** Where the proposal's density is cut, consistent with the expansion of the parent. */
+export function proposalCut(theCase: Case, expansion: Expansion): Truncation {
+  const lagrangian = theCase.proposal?.lagrangian;
+  const cutNeeded = lagrangian !== undefined && needsFieldCut(lagrangian, keepsConstantInContinuum);
+  const fields = expansion.fieldCut ?? (cutNeeded ? fieldLimit(theCase) : Number.POSITIVE_INFINITY);
+  const highest = Math.max(0, ...expansion.byTerm.map((t) => (t.leading ? totalOf(t.leading) : 0)));
+  return { order: highest + expansion.through + EMPTY_ORDERS, fields };
+}
+
+/** Multiplies every monomial by the spacings of its derivatives and divides by the cell volume. */
+function withSpacings(density: Density, lattice: Lattice): Density {
+  const perCell = Coefficient.one.div(cellVolume(lattice));
+  const out = new Map<JetMonomial, Coefficient>();
+  for (const [m, c] of density.terms) {
+    const powers = [...derivativeOrder(density.space, lattice, m)].map(
+      ([s, n]): [string, Rational] => [s, rational(n)],
+    );
+    out.set(m, c.mul(Coefficient.monomial(Rational.one, powers)).mul(perCell));
+  }
+  return new Density(density.space, out);
+}
+
+function collectOrders(
+  byTerm: readonly TermExpansion[],
+  space: JetSpace,
+  lattice: Lattice,
+  through: number,
+): ExpansionOrder[] {
+  const groups = new Map<string, { order: Map<string, number>; terms: Map<JetMonomial, ExpansionTerm> }>();
+  for (const { name, normal, base } of byTerm)
+    for (const [monomial, coefficient] of normal.terms)
+      for (const part of coefficient.terms) {
+        const order = new Map([...spacingOrder(part, lattice)].map(([s, n]) => [s, n - base.get(s)!]));
+        if (totalOf(order) > through) continue;
+        const key = [...order.values()].join(',');
+        const group = groups.get(key) ?? { order, terms: new Map<JetMonomial, ExpansionTerm>() };
+        groups.set(key, group);
+        const old = group.terms.get(monomial);
+        const value = Coefficient.monomial(part.factor, part.powers);
+        const sum = old ? old.coefficient.add(value) : value;
+        const from = old ? [...new Set([...old.from, name])] : [name];
+        if (sum.isZero) group.terms.delete(monomial);
+        else group.terms.set(monomial, { coefficient: sum, monomial, from });
+      }
+  return [...groups.values()]
+    .filter((g) => g.terms.size > 0)
+    .map((g) => ({ order: g.order, total: totalOf(g.order), terms: sortTerms([...g.terms.values()], space) }))
+    .sort((x, y) => compareOrders(x.order, y.order));
+}
+
+/** Fewest fields first, then the term's place in the action, then the monomial's derivatives. */
+function sortTerms(terms: ExpansionTerm[], space: JetSpace): ExpansionTerm[] {
+  const key = (t: ExpansionTerm): string =>
+    space
+      .factors(t.monomial)
+      .map((f) => f.derivative.join(','))
+      .join(';');
+  return terms.sort(
+    (x, y) => x.monomial.length - y.monomial.length || (key(x) < key(y) ? -1 : key(x) > key(y) ? 1 : 0),
+  );
 }
