@@ -35,21 +35,40 @@ function normalise(factor: Rational, powers: [string, Rational][]): CoefficientT
   return { factor: f, powers: kept, key: keyOf(kept) };
 }
 
+/** Products of power products met before, by their keys. Few differ within one case; emptied when it grows. */
+const products = new Map<string, Map<string, CoefficientTerm>>();
+const MOST_PRODUCTS = 5000;
+let productCount = 0;
+
 function multiplyTerms(x: CoefficientTerm, y: CoefficientTerm): CoefficientTerm {
   const factor = x.factor.mul(y.factor);
   if (y.powers.length === 0) return { factor, powers: x.powers, key: x.key };
   if (x.powers.length === 0) return { factor, powers: y.powers, key: y.key };
+  const product = products.get(x.key)?.get(y.key) ?? multiplyPowers(x, y);
+  return { factor: factor.mul(product.factor), powers: product.powers, key: product.key };
+}
+
+/** The product of the generators alone; its factor collects integral powers of primes. */
+function multiplyPowers(x: CoefficientTerm, y: CoefficientTerm): CoefficientTerm {
   const merged = new Map<string, Rational>(x.powers);
   for (const [g, e] of y.powers) {
     const old = merged.get(g);
     merged.set(g, old ? old.add(e) : e);
   }
-  return normalise(factor, [...merged]);
+  const product = normalise(Rational.one, [...merged]);
+  if (++productCount > MOST_PRODUCTS) {
+    products.clear();
+    productCount = 0;
+  }
+  const known = products.get(x.key) ?? new Map<string, CoefficientTerm>();
+  products.set(x.key, known.set(y.key, product));
+  return product;
 }
 
 /** Prime factorisation by trial division. Throws RangeError above 10^12, where it would stall. */
 function primeFactors(n: bigint): Map<bigint, number> {
-  if (n > 10n ** 12n) throw new RangeError(`a root of ${n} would need a factorisation of a number above 10^12`);
+  if (n > 10n ** 12n)
+    throw new RangeError(`a root of ${n} would need a factorisation of a number above 10^12`);
   const out = new Map<bigint, number>();
   let rest = n;
   for (let p = 2n; p * p <= rest; p += p === 2n ? 1n : 2n)
@@ -81,7 +100,16 @@ export class Coefficient {
   /** factor × Π generator^exponent. */
   static monomial(factor: Rational, powers: readonly (readonly [string, Rational])[]): Coefficient {
     if (factor.isZero) return Coefficient.zero;
-    return new Coefficient([normalise(factor, powers.map(([g, e]) => [g, e]))]);
+    return new Coefficient([
+      normalise(
+        factor,
+        powers.map(([g, e]) => [g, e]),
+      ),
+    ]);
+  }
+  /** The coefficient made of one term of another. */
+  static ofTerm(term: CoefficientTerm): Coefficient {
+    return new Coefficient([term]);
   }
   /** value^exponent for a positive rational. Throws RangeError for a negative value with a fractional exponent. */
   static root(value: Rational, exponent: Rational): Coefficient {

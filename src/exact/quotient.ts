@@ -2,7 +2,7 @@
 // so no multivariate gcd is needed; a quotient by a monomial is carried out at once.
 
 import { Coefficient } from './coefficient.ts';
-import { Rational } from './rational.ts';
+import type { Rational } from './rational.ts';
 
 /** numerator/denominator with a non-zero denominator. Immutable. */
 export class Quotient {
@@ -19,7 +19,9 @@ export class Quotient {
     if (monomial) return new Quotient(numerator.div(denominator), Coefficient.one);
     const ratio = numerator.terms[0]!.factor.div(denominator.terms[0]!.factor);
     const sameShape = denominator.scale(ratio).equals(numerator);
-    return sameShape ? new Quotient(Coefficient.rational(ratio), Coefficient.one) : new Quotient(numerator, denominator);
+    return sameShape
+      ? new Quotient(Coefficient.rational(ratio), Coefficient.one)
+      : new Quotient(numerator, denominator);
   }
 
   get isZero(): boolean {

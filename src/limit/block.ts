@@ -33,6 +33,7 @@ interface Reduced {
 export class Block {
   private readonly factors: Factor[];
   private readonly factorNumbers = new Map<string, number>();
+  private readonly raisedFactors: (number | undefined)[] = [];
   readonly monomials: readonly BlockMonomial[];
   private readonly index = new Map<BlockMonomial, number>();
   /** Undefined: the monomial is standard (its own normal form). */
@@ -75,10 +76,11 @@ export class Block {
     const counts = [...this.counts];
     const left = [...degree];
     const chosen: number[] = [];
-    // Factors are taken in descending number, so every multiset appears once.
-    const extend = (highest: number, remaining: number): void => {
+    // Factors are taken in descending number, so every multiset appears once and the first factor has the highest order:
+    // once it is too low for the rest to reach the degree, nothing further down can.
+    const extend = (highest: number, remaining: number, missing: number): void => {
       if (remaining === 0) {
-        if (left.every((n) => n === 0)) out.push(String.fromCharCode(...chosen));
+        if (missing === 0) out.push(String.fromCharCode(...chosen));
         if (out.length > limit)
           throw new LimitError(
             `a block of densities with ${this.counts.join('+')} fields and derivatives (${degree.join(', ')}) has more than ${limit} monomials; lower expand: beyond-leading`,
@@ -86,21 +88,20 @@ export class Block {
         return;
       }
       for (let i = highest; i >= 0; i--) {
-        const f = this.factors[i]!;
-        if (counts[f.field] === 0 || f.derivative.some((n, k) => n > left[k]!)) continue;
-        counts[f.field]!--;
-        for (const [k, n] of f.derivative.entries()) left[k]! -= n;
+        const { field, derivative, order } = this.factors[i]!;
+        if (order * remaining < missing) return;
+        if (counts[field] === 0 || exceeds(derivative, left)) continue;
+        counts[field]!--;
+        for (let k = 0; k < left.length; k++) left[k]! -= derivative[k]!;
         chosen.push(i);
-        extend(i, remaining - 1);
+        extend(i, remaining - 1, missing - order);
         chosen.pop();
-        for (const [k, n] of f.derivative.entries()) left[k]! += n;
-        counts[f.field]!++;
+        for (let k = 0; k < left.length; k++) left[k]! += derivative[k]!;
+        counts[field]!++;
       }
     };
-    extend(
-      this.factors.length - 1,
-      this.counts.reduce((x, y) => x + y, 0),
-    );
+    const sum = (ns: readonly number[]): number => ns.reduce((x, y) => x + y, 0);
+    extend(this.factors.length - 1, sum(this.counts), sum(degree));
     return out;
   }
 
@@ -131,15 +132,29 @@ export class Block {
   private divergence(lower: BlockMonomial, axis: number): Map<number, bigint> {
     const row = new Map<number, bigint>();
     const codes = Array.from(lower, (c) => c.charCodeAt(0));
-    for (const [position, code] of codes.entries()) {
-      const f = this.factors[code]!;
-      const raised = f.derivative.map((n, k) => (k === axis ? n + 1 : n));
+    for (let i = 0; i < codes.length; ) {
+      let repeats = 1;
+      while (codes[i + repeats] === codes[i]) repeats++;
       const next = [...codes];
-      next[position] = this.factorNumbers.get(factorKey(f.field, raised))!;
-      const number = this.index.get(monomialOf(next))!;
-      row.set(number, (row.get(number) ?? 0n) + 1n);
+      next[i] = this.raised(codes[i]!, axis);
+      row.set(this.index.get(monomialOf(next))!, BigInt(repeats));
+      i += repeats;
     }
     return row;
+  }
+
+  /** The factor with one more derivative along the axis. */
+  private raised(code: number, axis: number): number {
+    const known = this.raisedFactors[code * this.degree.length + axis];
+    if (known !== undefined) return known;
+    const { field, derivative } = this.factors[code]!;
+    const key = factorKey(
+      field,
+      derivative.map((n, k) => (k === axis ? n + 1 : n)),
+    );
+    const raised = this.factorNumbers.get(key)!;
+    this.raisedFactors[code * this.degree.length + axis] = raised;
+    return raised;
   }
 
   /** Gauss-Jordan over Q, relation by relation in ascending order of the worst monomial. Most relations bring in a
@@ -213,7 +228,14 @@ export class Block {
   }
 }
 
-const factorKey = (field: number, derivative: readonly number[]): string => `${field}:${derivative.join(',')}`;
+/** True when some entry of x is above that of y. */
+function exceeds(x: readonly number[], y: readonly number[]): boolean {
+  for (let k = 0; k < x.length; k++) if (x[k]! > y[k]!) return true;
+  return false;
+}
+
+const factorKey = (field: number, derivative: readonly number[]): string =>
+  `${field}:${derivative.join(',')}`;
 
 function monomialOf(codes: number[]): BlockMonomial {
   return String.fromCharCode(...codes.sort((x, y) => y - x));

@@ -38,7 +38,10 @@ export function totalDerivative(density: Density, axis: number): Density {
 }
 
 /** ∂L/∂φ_α for every jet variable of the field that occurs, by the derivative's key. */
-function partials(density: Density, field: number): Map<string, { alpha: readonly number[]; value: Density }> {
+function partials(
+  density: Density,
+  field: number,
+): Map<string, { alpha: readonly number[]; value: Density }> {
   const { space } = density;
   const out = new Map<string, { alpha: readonly number[]; terms: Map<JetMonomial, Coefficient> }>();
   for (const [m, c] of density.terms)
@@ -54,19 +57,17 @@ function partials(density: Density, field: number): Map<string, { alpha: readonl
       }
       i += repeats;
     }
-  return new Map([...out].map(([key, { alpha, terms }]) => [key, { alpha, value: new Density(space, terms) }]));
+  return new Map(
+    [...out].map(([key, { alpha, terms }]) => [key, { alpha, value: new Density(space, terms) }]),
+  );
 }
 
 /** The variational derivative of a density with respect to one field (by number). Axis by axis in Horner form, so that
  *  no more total derivatives are taken than the highest derivative along each axis. */
 export function eulerOperator(density: Density, field: number): Density {
   const axes = density.space.axes.length;
-  const horner = (
-    pieces: { alpha: readonly number[]; value: Density }[],
-    axis: number,
-  ): Density => {
-    if (axis === axes)
-      return pieces.reduce((sum, p) => sum.add(p.value), Density.zero(density.space));
+  const horner = (pieces: { alpha: readonly number[]; value: Density }[], axis: number): Density => {
+    if (axis === axes) return pieces.reduce((sum, p) => sum.add(p.value), Density.zero(density.space));
     let sum = Density.zero(density.space);
     const highest = Math.max(0, ...pieces.map((p) => p.alpha[axis]!));
     for (let n = highest; n >= 0; n--) {

@@ -163,7 +163,9 @@ function latticeForm(
     const out = new Map<JetMonomial, Coefficient>();
     for (const [name, stencil] of form) {
       const field = space.fields.indexOf(name);
-      const offsets = stencil.terms.map(({ exponents }) => exponents.map((e, k) => rational(e).sub(centre[k]!)));
+      const offsets = stencil.terms.map(({ exponents }) =>
+        exponents.map((e, k) => rational(e).sub(centre[k]!)),
+      );
       const extended = centre.map((_, k) => offsets.some((v) => !v[k]!.isZero));
       const powers = offsets.map((v) => v.map((x, k) => dividedPowers(x, extended[k] ? order : 0)));
       for (const alpha of multiIndices(extended, order)) {
@@ -242,7 +244,11 @@ function undividedDensity(
 }
 
 /** Powers of the spacings that the derivatives of a monomial carry. */
-export function derivativeOrder(space: JetSpace, lattice: Lattice, monomial: JetMonomial): Map<string, number> {
+export function derivativeOrder(
+  space: JetSpace,
+  lattice: Lattice,
+  monomial: JetMonomial,
+): Map<string, number> {
   const out = new Map(lattice.limits.map((s) => [s, 0]));
   for (const [k, n] of space.degree(monomial).entries()) {
     const { spacing } = lattice.axes[k]!;
@@ -348,22 +354,26 @@ function baseOrder(
 /** Expansion of the parent action as a Lagrangian density (sum over cells → ∫ / cell volume).
  *  @param isLeading says whether a monomial belongs to the proposal; by default every term counts from its own leading
  *  order. Throws LimitError (blocks, terms) and ExpansionPointError. */
-export function expandAction(theCase: Case, isLeading: (space: JetSpace) => (m: JetMonomial) => boolean = () => () => true): Expansion {
+export function expandAction(
+  theCase: Case,
+  isLeading: (space: JetSpace) => (m: JetMonomial) => boolean = () => () => true,
+): Expansion {
   const { lattice } = theCase;
   const space = jetSpaceOf(theCase);
-  const cutNeeded = theCase.parent.terms.some((t) => needsFieldCut(t.expression, keepsConstantOnLattice));
-  const fieldCut = cutNeeded ? fieldLimit(theCase) : theCase.expand.fields;
+  const fieldCut = fieldCutOf(theCase);
   const fields = fieldCut ?? Number.POSITIVE_INFINITY;
   const terms = theCase.parent.terms.map((t) => expandTerm(t, space, theCase, fields));
   const inProposal = isLeading(space);
   const accepted = (t: ExpandedTerm): boolean => t.leading?.monomials.some(inProposal) ?? false;
-  const byTerm = terms.map((t): TermExpansion => ({
-    name: t.name,
-    raw: t.raw,
-    normal: t.normal,
-    leading: t.leading?.order,
-    base: baseOrder(t, terms, accepted) ?? new Map(lattice.limits.map((s) => [s, 0])),
-  }));
+  const byTerm = terms.map(
+    (t): TermExpansion => ({
+      name: t.name,
+      raw: t.raw,
+      normal: t.normal,
+      leading: t.leading?.order,
+      base: baseOrder(t, terms, accepted) ?? new Map(lattice.limits.map((s) => [s, 0])),
+    }),
+  );
   const through = theCase.expand.beyondLeading;
   return { space, orders: collectOrders(byTerm, space, lattice, through), byTerm, through, fieldCut };
 }
@@ -376,29 +386,32 @@ export function jetSpaceOf(theCase: Case): JetSpace {
   );
 }
 
-/** Number of field factors kept where functions of undifferentiated fields need a cut. */
-export function fieldLimit(theCase: Case): number {
-  return theCase.expand.fields ?? Math.max(4, theCase.expand.beyondLeading + 2);
-}
-
-/** Where the proposal's density is cut, consistent with the expansion of the parent. */
-export function proposalCut(theCase: Case, expansion: Expansion): Truncation {
-  const lagrangian = theCase.proposal?.lagrangian;
-  const cutNeeded = lagrangian !== undefined && needsFieldCut(lagrangian, keepsConstantInContinuum);
-  const fields = expansion.fieldCut ?? (cutNeeded ? fieldLimit(theCase) : Number.POSITIVE_INFINITY);
-  const highest = Math.max(0, ...expansion.byTerm.map((t) => (t.leading ? totalOf(t.leading) : 0)));
-  return { order: highest + expansion.through + EMPTY_ORDERS, fields };
+/** Number of field factors kept on both sides, when a function of an undifferentiated field makes a cut necessary or the
+ *  case asks for one. */
+export function fieldCutOf(theCase: Case): number | undefined {
+  const { parent, proposal, expand } = theCase;
+  const isNeeded =
+    parent.terms.some((t) => needsFieldCut(t.expression, keepsConstantOnLattice)) ||
+    (proposal !== undefined && needsFieldCut(proposal.lagrangian, keepsConstantInContinuum));
+  return expand.fields ?? (isNeeded ? Math.max(4, expand.beyondLeading + 2) : undefined);
 }
 
 /** Multiplies every monomial by the spacings of its derivatives and divides by the cell volume. */
 function withSpacings(density: Density, lattice: Lattice): Density {
   const perCell = Coefficient.one.div(cellVolume(lattice));
+  const byDegree = new Map<string, Coefficient>();
   const out = new Map<JetMonomial, Coefficient>();
   for (const [m, c] of density.terms) {
-    const powers = [...derivativeOrder(density.space, lattice, m)].map(
-      ([s, n]): [string, Rational] => [s, rational(n)],
-    );
-    out.set(m, c.mul(Coefficient.monomial(Rational.one, powers)).mul(perCell));
+    const degree = density.space.degree(m);
+    const key = degree.join(',');
+    const spacings =
+      byDegree.get(key) ??
+      degree.reduce(
+        (product, n, k) => product.mul(Coefficient.symbol(lattice.axes[k]!.spacing, rational(n))),
+        perCell,
+      );
+    byDegree.set(key, spacings);
+    out.set(m, c.mul(spacings));
   }
   return new Density(density.space, out);
 }
@@ -419,7 +432,7 @@ function collectOrders(
         const group = groups.get(key) ?? { order, terms: new Map<JetMonomial, ExpansionTerm>() };
         groups.set(key, group);
         const old = group.terms.get(monomial);
-        const value = Coefficient.monomial(part.factor, part.powers);
+        const value = Coefficient.ofTerm(part);
         const sum = old ? old.coefficient.add(value) : value;
         const from = old ? [...new Set([...old.from, name])] : [name];
         if (sum.isZero) group.terms.delete(monomial);

@@ -1,8 +1,17 @@
-// types of the matching; see matchProposal
+// Matching: the proposal minus the expansion, in normal form. The proposal's parameters are taken as given or solved from
+// the lowest orders; then every monomial is classified.
 
-import type { Quotient } from '../exact/quotient.ts';
-import type { Rational } from '../exact/rational.ts';
-import type { JetMonomial } from './jets.ts';
+import { Coefficient } from '../exact/coefficient.ts';
+import { LaurentPolynomial } from '../exact/laurentPolynomial.ts';
+import { Quotient, rationalRatio } from '../exact/quotient.ts';
+import { type Rational, rational } from '../exact/rational.ts';
+import type { Expression } from '../model/action.ts';
+import type { Case, Proposal } from '../model/case.ts';
+import { continuumDensity, derivativeOrder, type Expansion, fieldCutOf } from './expansion.ts';
+import type { Density, JetMonomial, JetSpace } from './jets.ts';
+import { normalForm } from './normalForm.ts';
+import { parameterScaling } from './parameterScaling.ts';
+import { solveParameters } from './parameterSystem.ts';
 
 export type DifferenceKind = 'agrees' | 'wrong-coefficient' | 'missing-from-proposal' | 'only-in-proposal';
 
@@ -25,10 +34,193 @@ export interface Matching {
   readonly parameters: ReadonlyMap<string, Quotient>;
   readonly origin: 'given' | 'solved' | 'proposed';
   readonly differences: readonly MatchingDifference[];
-  /** Suggested or applied field rescalings, in words with formula. */
-  readonly rescalings: readonly string[];
-  /** Why the leading order could not be solved, when it could not. */
-  readonly undecided: string | undefined;
-  /** Powers s_i with which a parent parameter must scale, Π spacing^s, so that the proposal's parameters stay fixed. */
+  /** Field rescalings φ → Z φ that would make the match work, by field name. */
+  readonly rescalings: ReadonlyMap<string, Quotient>;
+  /** Proposal parameters that the expansion does not determine. */
+  readonly undetermined: readonly string[];
+  /** Powers s with which a parent parameter must scale, Π spacing^s, so that the proposal's parameters stay fixed. */
   readonly scaling: ReadonlyMap<string, ReadonlyMap<string, Rational>>;
+}
+
+/** Orders kept in a proposal beyond those asked for, so that a term of too high an order is still seen. */
+const PROPOSAL_ORDERS = 12;
+
+/** Normal form of the proposal's Lagrangian in its own parameters; undefined without a proposal. */
+export function proposalDensity(theCase: Case, space: JetSpace): Density | undefined {
+  if (!theCase.proposal) return undefined;
+  const cut = {
+    order: theCase.expand.beyondLeading + PROPOSAL_ORDERS,
+    fields: fieldCutOf(theCase) ?? Number.POSITIVE_INFINITY,
+  };
+  return normalForm(continuumDensity(theCase.proposal.lagrangian, space, cut, theCase.expand.background));
+}
+
+/** Entry of the expansion at one monomial. */
+interface ParentEntry {
+  readonly order: number;
+  readonly coefficient: Coefficient;
+}
+
+function parentEntries(expansion: Expansion): Map<JetMonomial, ParentEntry[]> {
+  const out = new Map<JetMonomial, ParentEntry[]>();
+  for (const { total, terms } of expansion.orders)
+    for (const { monomial, coefficient } of terms) {
+      const list = out.get(monomial);
+      if (list) list.push({ order: total, coefficient });
+      else out.set(monomial, [{ order: total, coefficient }]);
+    }
+  return out;
+}
+
+/** Relative order that a monomial would have, counted from the closest parent term. */
+function nominalOrder(theCase: Case, expansion: Expansion, monomial: JetMonomial): number {
+  const order = derivativeOrder(expansion.space, theCase.lattice, monomial);
+  const totals = expansion.byTerm
+    .filter((t) => t.leading)
+    .map(({ base }) => [...order].reduce((sum, [s, n]) => sum + n - base.get(s)!, 0));
+  return totals.length > 0 ? Math.min(...totals) : 0;
+}
+
+/** Solves or checks the proposal's parameters and classifies every monomial of leading order and of the orders that the
+ *  proposal itself includes. `forbiddenBy` is filled in once the symmetries are known (see explainDifferences). */
+export function matchProposal(theCase: Case, expansion: Expansion, proposal: Proposal): Matching {
+  const density = proposalDensity({ ...theCase, proposal }, expansion.space)!;
+  const parent = parentEntries(expansion);
+  const lowest = (m: JetMonomial): number => parent.get(m)?.[0]?.order ?? nominalOrder(theCase, expansion, m);
+  const judged = [...density.terms.keys()].filter((m) => lowest(m) <= expansion.through);
+  const highest = Math.max(0, ...judged.filter((m) => parent.has(m)).map(lowest));
+  const parentAt = (m: JetMonomial): Coefficient =>
+    (parent.get(m) ?? [])
+      .filter((e) => e.order <= highest)
+      .reduce((sum, e) => sum.add(e.coefficient), Coefficient.zero);
+  const monomials = [...new Set([...judged, ...[...parent.keys()].filter((m) => lowest(m) <= highest)])].sort(
+    (x, y) => lowest(x) - lowest(y) || x.length - y.length,
+  );
+  const solve = (rescaling: ReadonlyMap<string, Quotient>): Solution => {
+    const rescaled = (m: JetMonomial): Quotient =>
+      expansion.space
+        .factors(m)
+        .map((f) => rescaling.get(expansion.space.fields[f.field]!))
+        .reduce<Quotient>((c, z) => (z ? c.mul(z) : c), Quotient.of(parentAt(m)));
+    const equations = monomials.map((m) => ({ left: density.get(m), right: rescaled(m) }));
+    const parameters = solveParameters(
+      equations,
+      proposal.parameters.map((p) => p.name),
+      proposal.matching ?? new Map(),
+    );
+    const differences = monomials.flatMap((m) => {
+      const d = classify(
+        m,
+        rescaled(m),
+        Quotient.substitute(density.get(m), parameters),
+        parent.get(m)?.[0]?.order,
+      );
+      return d ? [d] : [];
+    });
+    return { parameters, differences };
+  };
+  const { parameters, differences } = solve(proposal.rescaling);
+  const given = proposal.parameters.every((p) => proposal.matching?.has(p.name));
+  return {
+    parameters,
+    origin: given ? 'given' : 'solved',
+    differences,
+    rescalings: suggestRescaling(differences, proposal, expansion.space, solve),
+    undetermined: proposal.parameters.map((p) => p.name).filter((p) => !parameters.has(p)),
+    scaling: parameterScaling(parameters, theCase),
+  };
+}
+
+interface Solution {
+  readonly parameters: Map<string, Quotient>;
+  readonly differences: MatchingDifference[];
+}
+
+function classify(
+  monomial: JetMonomial,
+  parent: Quotient,
+  proposal: Quotient,
+  order: number | undefined,
+): MatchingDifference | undefined {
+  if (parent.isZero && proposal.isZero) return undefined;
+  const kind = parent.isZero
+    ? 'only-in-proposal'
+    : proposal.isZero
+      ? 'missing-from-proposal'
+      : parent.equals(proposal)
+        ? 'agrees'
+        : 'wrong-coefficient';
+  return {
+    kind,
+    monomial,
+    parent,
+    proposal,
+    ratio: kind === 'wrong-coefficient' ? rationalRatio(proposal, parent) : undefined,
+    order: parent.isZero ? undefined : order,
+    forbiddenBy: undefined,
+  };
+}
+
+/** Tries φ → Z φ with Z fixed by the first quadratic monomial that disagrees; kept only when everything then agrees. */
+function suggestRescaling(
+  differences: readonly MatchingDifference[],
+  proposal: Proposal,
+  space: JetSpace,
+  solve: (rescaling: ReadonlyMap<string, Quotient>) => Solution,
+): ReadonlyMap<string, Quotient> {
+  const wrong = differences.find((d) => d.kind === 'wrong-coefficient' && d.monomial.length === 2);
+  if (!wrong) return new Map();
+  const fields = new Set(space.factors(wrong.monomial).map((f) => space.fields[f.field]!));
+  const [field] = fields;
+  if (fields.size !== 1 || field === undefined) return new Map();
+  try {
+    const z = wrong.proposal.div(wrong.parent).pow(rational(1, 2));
+    const old = proposal.rescaling.get(field);
+    const trial = new Map(proposal.rescaling).set(field, old ? old.mul(z) : z);
+    return solve(trial).differences.every((d) => d.kind === 'agrees') ? trial : new Map();
+  } catch (error) {
+    if (error instanceof RangeError) return new Map();
+    throw error;
+  }
+}
+
+/** A proposal for a case without one: every leading monomial with a parameter of its own, ½ μ_i for squares. */
+export function proposeContinuum(theCase: Case, expansion: Expansion): Proposal {
+  const leading = expansion.orders.filter((o) => o.total <= 0).flatMap((o) => o.terms);
+  const taken = new Set([...theCase.parameters.map((p) => p.name), ...theCase.lattice.limits]);
+  const names: string[] = [];
+  for (let i = 1; names.length < leading.length; i++) if (!taken.has(`mu${i}`)) names.push(`mu${i}`);
+  const half = Coefficient.rational(rational(1, 2));
+  const matching = new Map<string, Quotient>();
+  const terms = leading.map(({ monomial, coefficient }, i): Expression => {
+    const isSquare = monomial.length === 2 && monomial[0] === monomial[1];
+    matching.set(names[i]!, Quotient.of(isSquare ? coefficient.scale(rational(2)) : coefficient));
+    const weight = Coefficient.symbol(names[i]!).mul(isSquare ? half : Coefficient.one);
+    return {
+      kind: 'product',
+      factors: [{ kind: 'constant', value: weight }, monomialExpression(expansion.space, monomial)],
+    };
+  });
+  return {
+    parameters: names.map((name) => ({ name, positive: true })),
+    lagrangian: { kind: 'sum', terms },
+    text: '',
+    position: { file: theCase.file, line: 1, column: 1 },
+    matching,
+    rescaling: new Map(),
+  };
+}
+
+/** A jet monomial as an expression: powers of derivatives. */
+function monomialExpression(space: JetSpace, monomial: JetMonomial): Expression {
+  const dimension = space.axes.length;
+  const powers = new Map<string, number>();
+  for (const code of monomial) powers.set(code, (powers.get(code) ?? 0) + 1);
+  const factors = [...powers].map(([code, exponent]): Expression => {
+    const { field, derivative } = space.variable(code.charCodeAt(0));
+    const operator = LaurentPolynomial.of(dimension, [{ exponents: derivative, weight: Coefficient.one }]);
+    const base: Expression = { kind: 'linear', form: new Map([[space.fields[field]!, operator]]) };
+    return exponent === 1 ? base : { kind: 'power', base, exponent };
+  });
+  return factors.length === 1 ? factors[0]! : { kind: 'product', factors };
 }

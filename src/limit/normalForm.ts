@@ -4,30 +4,24 @@
 // size of a symmetrised polynomial.
 //
 // A derivative common to all factors of a block is taken out first. This is exact: in momenta it multiplies by
-// Π_i k_i^γ, which is no zero divisor where Σ k = 0, and the order of the monomials in a block prefers large common
+// Π_i k_i^γ, which for two or more fields is no zero divisor where Σ k = 0, and the order of the monomials in a block prefers large common
 // derivatives, so that the representative does not depend on the division.
 
 import type { Coefficient } from '../exact/coefficient.ts';
 import { Rational } from '../exact/rational.ts';
 import { Block } from './block.ts';
-import { addTerm, Density, type JetMonomial, type JetVariable } from './jets.ts';
+import { Density, type JetMonomial, type JetSpace, type JetVariable } from './jets.ts';
 
-const blocks = new Map<string, Block>();
+/** Blocks worked out so far, kept as long as the jet space they were met in. */
+const blocksOf = new WeakMap<JetSpace, Map<string, Block>>();
 
-function blockFor(counts: readonly number[], degree: readonly number[]): Block {
+function blockFor(space: JetSpace, counts: readonly number[], degree: readonly number[]): Block {
+  const blocks = blocksOf.get(space) ?? new Map<string, Block>();
+  blocksOf.set(space, blocks);
   const key = `${counts.join(',')}|${degree.join(',')}`;
-  let block = blocks.get(key);
-  if (!block) {
-    block = new Block(counts, degree);
-    blocks.set(key, block);
-  }
+  const block = blocks.get(key) ?? new Block(counts, degree);
+  blocks.set(key, block);
   return block;
-}
-
-/** Dimension of the densities with the given numbers of fields and derivatives, modulo total derivatives.
- *  Throws LimitError for a block beyond the stated size. */
-export function quotientDimension(counts: readonly number[], degree: readonly number[]): number {
-  return blockFor(counts, degree).standardCount;
 }
 
 /** The representative of the density modulo total derivatives; zero iff the density is a total derivative. The
@@ -48,22 +42,26 @@ export function normalForm(density: Density): Density {
   const out = new Map<JetMonomial, Coefficient>();
   for (const { counts, degree, monomials } of groups.values()) {
     const factorLists = monomials.map((m) => space.factors(m));
-    const common = commonDerivative(factorLists);
     const size = counts.reduce((x, y) => x + y, 0);
+    // With a single field Σ k = 0 leaves no momentum: every derivative is a total derivative and nothing is divided out.
+    const common = size === 1 ? degree.map(() => 0) : commonDerivative(factorLists);
     const block = blockFor(
+      space,
       counts,
       degree.map((n, k) => n - size * common[k]!),
     );
+    const sums = new Map<number, Coefficient>();
     for (const [i, factors] of factorLists.entries()) {
       const coefficient = density.get(monomials[i]!);
       const { numerators, denominator } = block.reduction(block.number(shifted(factors, common, -1)));
-      for (const [standard, numerator] of numerators)
-        addTerm(
-          out,
-          space.monomial(shifted(block.factorsOf(standard), common, 1)),
-          coefficient.scale(Rational.of(numerator, denominator)),
-        );
+      for (const [standard, numerator] of numerators) {
+        const term = coefficient.scale(Rational.of(numerator, denominator));
+        const old = sums.get(standard);
+        sums.set(standard, old ? old.add(term) : term);
+      }
     }
+    for (const [standard, sum] of sums)
+      if (!sum.isZero) out.set(space.monomial(shifted(block.factorsOf(standard), common, 1)), sum);
   }
   return new Density(space, out);
 }

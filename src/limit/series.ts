@@ -193,7 +193,10 @@ class Composer<C extends RingElement<C>> {
   }
 
   /** Σ_k F^(k)(point)/k! u^k with the argument split into its constant part and u; ends when powers are cut away. */
-  private compose(taylor: (point: Coefficient, order: number) => Coefficient[], argument: Series<C>): Series<C> {
+  private compose(
+    taylor: (point: Coefficient, order: number) => Coefficient[],
+    argument: Series<C>,
+  ): Series<C> {
     const constant = argument.constantPart;
     const point = constant === undefined ? Coefficient.zero : this.ring.toCoefficient(constant);
     const u = argument.withoutConstant();

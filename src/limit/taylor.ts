@@ -28,7 +28,8 @@ function factorial(k: number): Rational {
 function circleValues(point: Coefficient): { cos: Coefficient; sin: Coefficient } {
   const turn = point.isZero ? Rational.zero : point.div(Coefficient.symbol('pi')).asRational;
   const twelfths = turn?.mul(rational(12));
-  if (!twelfths?.isInteger) throw new ExpansionPointError('cos and sin are expanded about multiples of pi/12 at most');
+  if (!twelfths?.isInteger)
+    throw new ExpansionPointError('cos and sin are expanded about multiples of pi/12 at most');
   const index = Number(((twelfths.num % 24n) + 24n) % 24n);
   const half = rational(1, 2);
   const roots = new Map<number, Coefficient>([
@@ -59,7 +60,9 @@ export function powerSeries(exponent: Rational, point: Coefficient, order: numbe
     try {
       return point.pow(rest).scale(weight);
     } catch {
-      throw new ExpansionPointError(`x^(${exponent}) cannot be expanded exactly about a sum or a negative number`);
+      throw new ExpansionPointError(
+        `x^(${exponent}) cannot be expanded exactly about a sum or a negative number`,
+      );
     }
   });
 }

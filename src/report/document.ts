@@ -16,8 +16,15 @@ export type Block =
   | { readonly kind: 'heading'; readonly level: 1 | 2 | 3; readonly pieces: Pieces }
   | { readonly kind: 'paragraph'; readonly pieces: Pieces }
   /** Every item is a first line and lines that belong to it. */
-  | { readonly kind: 'list'; readonly items: readonly { readonly first: Pieces; readonly more: readonly Pieces[] }[] }
-  | { readonly kind: 'table'; readonly head: readonly string[]; readonly rows: readonly (readonly Pieces[])[] };
+  | {
+      readonly kind: 'list';
+      readonly items: readonly { readonly first: Pieces; readonly more: readonly Pieces[] }[];
+    }
+  | {
+      readonly kind: 'table';
+      readonly head: readonly string[];
+      readonly rows: readonly (readonly Pieces[])[];
+    };
 
 export const heading = (level: 1 | 2 | 3, ...pieces: Piece[]): Block => ({ kind: 'heading', level, pieces });
 export const paragraph = (...pieces: Piece[]): Block => ({ kind: 'paragraph', pieces });

@@ -25,7 +25,9 @@ export function visibleLines(text: string): string {
 /** JSON of a value, two-space indent, a final newline; unsafe characters inside strings as \uXXXX. */
 export function safeJson(value: unknown): string {
   const units = (c: string): string =>
-    Array.from({ length: c.length }, (_, i) => `\\u${c.charCodeAt(i).toString(16).padStart(4, '0')}`).join('');
+    Array.from({ length: c.length }, (_, i) => `\\u${c.charCodeAt(i).toString(16).padStart(4, '0')}`).join(
+      '',
+    );
   // Line breaks of the layout stand outside strings and must stay; inside strings JSON.stringify has escaped them.
   const text = JSON.stringify(value, null, 2).replace(UNSAFE, (c) => (c === '\n' ? c : units(c)));
   return `${text}\n`;

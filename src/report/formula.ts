@@ -31,7 +31,13 @@ export function notationPiece(text: string): Piece {
 }
 
 const power = (base: string, exponent: Rational): string =>
-  exponent.isZero ? '' : exponent.isOne ? base : exponent.isInteger ? `${base}^${exponent}` : `${base}^(${exponent})`;
+  exponent.isZero
+    ? ''
+    : exponent.isOne
+      ? base
+      : exponent.isInteger
+        ? `${base}^${exponent}`
+        : `${base}^(${exponent})`;
 const latexPower = (base: string, exponent: Rational): string =>
   exponent.isZero ? '' : exponent.isOne ? base : `${base}^{${exponent}}`;
 
@@ -41,6 +47,25 @@ export function scalingPiece(scaling: Scaling | null): Piece {
   if (scaling === 'zero') return 'zero';
   const { a, l, t } = scaling;
   const text = [power('a', a), power('l', l), power('t', t)].filter((s) => s !== '').join(' ');
-  const latex = [latexPower('a', a), latexPower('\\ell', l), latexPower('t', t)].filter((s) => s !== '').join('\\,');
+  const latex = [latexPower('a', a), latexPower('\\ell', l), latexPower('t', t)]
+    .filter((s) => s !== '')
+    .join('\\,');
   return text === '' ? formula('a^0', 'a^{0}') : formula(text, latex);
+}
+
+/** Coefficient times monomial as one expression that reads back; sums are put in parentheses. */
+export function termPiece(
+  space: JetSpace,
+  { coefficient, monomial }: { readonly coefficient: Coefficient; readonly monomial: JetMonomial },
+): { readonly text: string; readonly latex: string } {
+  const text = printCoefficient(coefficient);
+  const latex = latexCoefficient(coefficient);
+  if (monomial === '') return { text, latex };
+  const m = printMonomial(space, monomial);
+  const latexM = latexMonomial(space, monomial);
+  if (coefficient.isOne) return { text: m, latex: latexM };
+  if (coefficient.neg().isOne) return { text: `-${m}`, latex: `-${latexM}` };
+  return coefficient.terms.length === 1
+    ? { text: `${text}*${m}`, latex: `${latex}\\,${latexM}` }
+    : { text: `(${text})*${m}`, latex: `\\left(${latex}\\right)${latexM}` };
 }

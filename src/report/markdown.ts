@@ -24,7 +24,9 @@ function block(b: Block, sets: DisplayCheck): string {
       return inline(b.pieces);
     case 'list':
       return b.items
-        .map(({ first, more }) => [`- ${inline(first)}`, ...more.map((pieces) => `  ${inline(pieces)}`)].join('  \n'))
+        .map(({ first, more }) =>
+          [`- ${inline(first)}`, ...more.map((pieces) => `  ${inline(pieces)}`)].join('  \n'),
+        )
         .join('\n');
     case 'table': {
       const row = (cells: readonly string[]): string => `| ${cells.join(' | ')} |`;

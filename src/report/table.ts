@@ -1,6 +1,7 @@
 // Layout of monospaced text: widths, wrapping and tables that stay within a given number of columns.
 
-const WIDE = /\p{Script=Han}|\p{Script=Hiragana}|\p{Script=Katakana}|\p{Script=Hangul}|\p{Emoji_Presentation}|[\uff01-\uff60]/u;
+const WIDE =
+  /\p{Script=Han}|\p{Script=Hiragana}|\p{Script=Katakana}|\p{Script=Hangul}|\p{Emoji_Presentation}|[\uff01-\uff60]/u;
 const graphemes = new Intl.Segmenter('en', { granularity: 'grapheme' });
 
 /** Number of terminal columns that a line of printable text takes. */

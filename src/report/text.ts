@@ -48,10 +48,14 @@ function flow(pieces: Pieces, width: number, paint: Paint): string[] {
   });
 }
 
-const indented = (lines: readonly string[], by: number): string[] => lines.map((l) => (l === '' ? l : ' '.repeat(by) + l));
+const indented = (lines: readonly string[], by: number): string[] =>
+  lines.map((l) => (l === '' ? l : ' '.repeat(by) + l));
 
 function cell(pieces: Pieces, paint: Paint): { text: string; paint: (text: string) => string } {
-  const tone = pieces.length === 1 && typeof pieces[0] === 'object' && pieces[0].kind === 'toned' ? pieces[0].tone : undefined;
+  const tone =
+    pieces.length === 1 && typeof pieces[0] === 'object' && pieces[0].kind === 'toned'
+      ? pieces[0].tone
+      : undefined;
   return { text: pieces.map(plain).join(''), paint: (text) => (tone && text ? paint(tone, text) : text) };
 }
 
@@ -59,7 +63,13 @@ function blockLines(block: Block, width: number, paint: Paint): string[] {
   switch (block.kind) {
     case 'heading': {
       const lines = flow(block.pieces, width, paint);
-      if (block.level === 1) return [...lines, '='.repeat(Math.min(width, Math.max(...wrap(block.pieces.map(plain).join(''), width).map(columns))))];
+      if (block.level === 1)
+        return [
+          ...lines,
+          '='.repeat(
+            Math.min(width, Math.max(...wrap(block.pieces.map(plain).join(''), width).map(columns))),
+          ),
+        ];
       return lines.map((line) => paint('strong', block.level === 2 ? line.toUpperCase() : line));
     }
     case 'paragraph':
@@ -83,7 +93,8 @@ export function renderText(document: readonly Block[], style: TextStyle): string
   const paint = painter(style.colour);
   return `${document
     .map((block, i) => {
-      const before = i === 0 ? '' : document[i - 1]!.kind === 'heading' ? '\n' : '\n\n';
+      const underHeading = document[i - 1]?.kind === 'heading' && block.kind !== 'heading';
+      const before = i === 0 ? '' : underHeading ? '\n' : '\n\n';
       return before + blockLines(block, style.width ?? 80, paint).join('\n');
     })
     .join('')}\n`;
