@@ -12,7 +12,8 @@ else {
   // A reader that closes the pipe early (`saltus check … | head`) ends the run quietly, with the code already known.
   process.stdout.on('error', (error: NodeJS.ErrnoException) => {
     if (error.code === 'EPIPE') process.exit();
-    throw error;
+    process.stderr.write(`saltus: cannot write to standard output: ${error.code ?? error.message}\n`);
+    process.exit(2);
   });
   const { runCommand } = await import('./command.ts');
   process.exitCode = await runCommand(args);

@@ -17,7 +17,7 @@ import { renderDocument } from './render.ts';
 import { rulesFor, runCase } from './run.ts';
 
 const SECTIONS: Record<Section, (analyses: Analyses) => Block[]> = {
-  expansion: (a) => [...expansionBlocks(a.expansion), ...matchingBlocks(a.matching, a.expansion)],
+  expansion: (a) => [...expansionBlocks(a), ...matchingBlocks(a)],
   symmetries: symmetryBlocks,
   configurations: configurationBlocks,
 };

@@ -32,3 +32,41 @@ export type Tree =
 /** Functions with a Taylor series that the notation knows. */
 export const FUNCTION_NAMES = ['cos', 'sin', 'tan', 'exp', 'log', 'sqrt', 'cosh', 'sinh'] as const;
 export type FunctionName = (typeof FUNCTION_NAMES)[number];
+
+/** True for a tree that still waits for something to act on, such as `T_x - 2 + T_x^-1`. A sum or product is
+ *  operator-valued when one of its parts is; numbers in it mean multiples of the identity. */
+export function isOperatorValued(tree: Tree): boolean {
+  switch (tree.kind) {
+    case 'operator':
+      return true;
+    case 'sum':
+      return tree.terms.some(isOperatorValued);
+    case 'product':
+      return tree.factors.some(isOperatorValued);
+    case 'negate':
+      return isOperatorValued(tree.operand);
+    case 'quotient':
+      return isOperatorValued(tree.numerator);
+    case 'power':
+      return isOperatorValued(tree.base);
+    default:
+      return false;
+  }
+}
+
+/** The number that a tree of signs and quotients of literals stands for (`-1/2`, `(3)`), else undefined. */
+export function rationalValue(tree: Tree): Rational | undefined {
+  switch (tree.kind) {
+    case 'number':
+      return tree.value;
+    case 'negate':
+      return rationalValue(tree.operand)?.neg();
+    case 'quotient': {
+      const denominator = rationalValue(tree.denominator);
+      if (!denominator || denominator.isZero) return undefined;
+      return rationalValue(tree.numerator)?.div(denominator);
+    }
+    default:
+      return undefined;
+  }
+}

@@ -40,8 +40,7 @@ export function markdownText(text: string): string {
     .replace(/[\\`*_{}[\]|~$]/g, (c) => `\\${c}`)
     .replaceAll('&', '&amp;')
     .replaceAll('<', '&lt;')
-    .replaceAll('>', '&gt;')
-    .replace(/^(\s*)([-+#=])/, '$1\\$2')
+    .replace(/^(\s*)([-+#=>])/, '$1\\$2')
     .replace(/^(\s*\d+)([.)])/, '$1\\$2');
 }
 

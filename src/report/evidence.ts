@@ -1,11 +1,11 @@
 // The evidence behind a report: matching, symmetries, rough configurations, expansion, witnesses.
 
-import type { Expansion, ExpansionOrder } from '../limit/expansion.ts';
+import type { ExpansionOrder } from '../limit/expansion.ts';
 import type { Matching, MatchingDifference } from '../limit/matching.ts';
 import type { Configuration } from '../rough/profile.ts';
 import type { Analyses } from '../rules/facts.ts';
 import type { ShiftSymmetry } from '../symmetry/family.ts';
-import { type Block, heading, type Piece, type Pieces, paragraph, prose, toned } from './document.ts';
+import { type Block, heading, type Pieces, paragraph, prose, toned } from './document.ts';
 import { coefficientPiece, monomialPiece, notationPiece, quotientPiece, scalingPiece } from './formula.ts';
 
 const yesNo = (value: boolean | null): string => (value === true ? 'yes' : value === false ? 'no' : '-');
@@ -41,7 +41,8 @@ const ORIGINS = {
 } as const;
 
 /** How the parameters of the proposal follow from those of the parent, and where the two sides differ. */
-export function matchingBlocks(matching: Matching | undefined, expansion: Expansion): Block[] {
+export function matchingBlocks({ matching, expansion, case: theCase }: Analyses): Block[] {
+  const spacings = theCase.lattice.limits;
   if (!matching) return [heading(2, 'Matching'), paragraph('The case has no proposal to match.')];
   const blocks: Block[] = [heading(2, 'Matching')];
   if (matching.undetermined.length > 0)
@@ -52,7 +53,7 @@ export function matchingBlocks(matching: Matching | undefined, expansion: Expans
       ),
     );
   if (matching.parameters.size > 0)
-    blocks.push(paragraph(ORIGINS[matching.origin]), parameterTable(matching));
+    blocks.push(paragraph(ORIGINS[matching.origin]), parameterTable(matching, spacings));
   if (matching.scaling.size > 0) blocks.push(paragraph(`Fixed in the limit when ${scalingWords(matching)}.`));
   if (matching.differences.length > 0)
     blocks.push({
@@ -60,23 +61,30 @@ export function matchingBlocks(matching: Matching | undefined, expansion: Expans
       head: ['monomial', 'parent', 'proposal', 'verdict'],
       rows: matching.differences.map((d) => [
         [monomialPiece(expansion.space, d.monomial)],
-        [quotientPiece(d.parent)],
-        [quotientPiece(d.proposal)],
+        [quotientPiece(d.parent, spacings)],
+        [quotientPiece(d.proposal, spacings)],
         differenceWords(d),
       ]),
     });
   for (const [field, factor] of matching.rescalings)
     blocks.push(
-      paragraph(`The two sides would match after rescaling ${field} by `, quotientPiece(factor), '.'),
+      paragraph(
+        `The two sides would match after rescaling ${field} by `,
+        quotientPiece(factor, spacings),
+        '.',
+      ),
     );
   return blocks;
 }
 
-function parameterTable(matching: Matching): Block {
+function parameterTable(matching: Matching, spacings: readonly string[]): Block {
   return {
     kind: 'table',
     head: ['parameter', 'in parent parameters and spacings'],
-    rows: [...matching.parameters].map(([name, value]) => [[notationPiece(name)], [quotientPiece(value)]]),
+    rows: [...matching.parameters].map(([name, value]) => [
+      [notationPiece(name)],
+      [quotientPiece(value, spacings)],
+    ]),
   };
 }
 
@@ -132,8 +140,8 @@ export function symmetryBlocks({ shifts, pointGroup, case: theCase }: Analyses):
       : [],
   );
   if (broken.length > 0) blocks.push({ kind: 'list', items: broken });
-  blocks.push(paragraph(`Completeness on the lattice: ${shifts.lattice.text}.`));
-  if (shifts.continuum) blocks.push(paragraph(`Completeness in the continuum: ${shifts.continuum.text}.`));
+  blocks.push(paragraph(`Lattice: ${shifts.lattice.text}.`));
+  if (shifts.continuum) blocks.push(paragraph(`Continuum: ${shifts.continuum.text}.`));
   const g = pointGroup;
   const name = g.name === undefined ? '' : ` ${g.name}`;
   const continuum = g.continuumOrder === null ? '' : `; the proposal has order ${g.continuumOrder}`;
@@ -147,9 +155,6 @@ export function symmetryBlocks({ shifts, pointGroup, case: theCase }: Analyses):
   );
   return blocks;
 }
-
-const suppressionWord = (value: boolean | null): Piece =>
-  value === null ? '-' : value ? 'suppressed' : 'unsuppressed';
 
 function configurationNotes(configurations: readonly Configuration[]): Block[] {
   const items = configurations.flatMap((c) =>
@@ -173,18 +178,34 @@ export function configurationBlocks({ configurations, charges }: Analyses): Bloc
     blocks.push(
       {
         kind: 'table',
-        head: ['family', 'lattice S ~', 'continuum S ~', 'on the lattice', 'in the continuum', 'series'],
+        head: [
+          'family',
+          'S on lattice',
+          'S in continuum',
+          'suppressed on lattice',
+          'in continuum',
+          'series in a',
+        ],
         rows: configurations.map((c) => [
           [notationPiece(c.profile), ...(c.claimed ? [' (claimed)'] : [])],
           [scalingPiece(c.lattice)],
           [scalingPiece(c.continuum)],
-          [suppressionWord(c.suppressed.lattice)],
-          [suppressionWord(c.suppressed.continuum)],
+          [yesNo(c.suppressed.lattice)],
+          [yesNo(c.suppressed.continuum)],
           [c.truncates ? 'truncates' : toned('warning', 'all orders count')],
         ]),
       },
       ...configurationNotes(configurations),
     );
+  const mixed = configurations.filter((c) => c.mixedAction !== '');
+  if (mixed.length > 0)
+    blocks.push(heading(3, 'Effective actions on the families'), {
+      kind: 'list',
+      items: mixed.map((c) => ({
+        first: [notationPiece(c.profile), ': ', notationPiece(c.mixedAction)],
+        more: [],
+      })),
+    });
   if (charges.length > 0)
     blocks.push(heading(3, 'Energy of a unit charge'), {
       kind: 'list',
@@ -209,7 +230,8 @@ function orderWords(order: ExpansionOrder): string {
 }
 
 /** The expanded Lagrangian density modulo total derivatives, order by order. */
-export function expansionBlocks(expansion: Expansion): Block[] {
+export function expansionBlocks({ expansion, case: theCase }: Analyses): Block[] {
+  const spacings = theCase.lattice.limits;
   const cut =
     expansion.fieldCut === undefined
       ? ''
@@ -227,7 +249,7 @@ export function expansionBlocks(expansion: Expansion): Block[] {
             kind: 'table',
             head: ['coefficient', 'monomial', 'from'],
             rows: order.terms.map((t) => [
-              [coefficientPiece(t.coefficient)],
+              [coefficientPiece(t.coefficient, spacings)],
               [monomialPiece(expansion.space, t.monomial)],
               [t.from.join(', ')],
             ]),

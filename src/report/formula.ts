@@ -3,19 +3,21 @@
 import type { Coefficient } from '../exact/coefficient.ts';
 import type { Quotient } from '../exact/quotient.ts';
 import type { Rational } from '../exact/rational.ts';
-import type { JetMonomial, JetSpace } from '../limit/jets.ts';
-import { latexMonomial, printMonomial } from '../limit/printDensity.ts';
+import { Density, type JetMonomial, type JetSpace } from '../limit/jets.ts';
+import { latexDensity, latexMonomial, printDensity, printMonomial } from '../limit/printDensity.ts';
 import { latexCoefficient, latexQuotient, latexTree } from '../notation/latexWrite.ts';
-import { parseExpression } from '../notation/parse.ts';
+import { readTree } from '../notation/parse.ts';
 import { printCoefficient, printQuotient } from '../notation/print.ts';
 import type { Scaling } from '../rough/profile.ts';
 import { formula, type Piece } from './document.ts';
 
-/** A coefficient such as `1/2*beta*a^2/b`. */
-export const coefficientPiece = (c: Coefficient): Piece => formula(printCoefficient(c), latexCoefficient(c));
+/** A coefficient such as `beta*a^2/(2*b)`, the spacings last. */
+export const coefficientPiece = (c: Coefficient, spacings: readonly string[]): Piece =>
+  formula(printCoefficient(c, spacings), latexCoefficient(c, spacings));
 
 /** A quotient such as `J1*J2/(J1 + J2)`. */
-export const quotientPiece = (q: Quotient): Piece => formula(printQuotient(q), latexQuotient(q));
+export const quotientPiece = (q: Quotient, spacings: readonly string[]): Piece =>
+  formula(printQuotient(q, spacings), latexQuotient(q, spacings));
 
 /** A jet monomial such as `(d_x d_y phi)^2`. */
 export const monomialPiece = (space: JetSpace, monomial: JetMonomial): Piece =>
@@ -24,7 +26,7 @@ export const monomialPiece = (space: JetSpace, monomial: JetMonomial): Piece =>
 /** Notation that the analyses wrote as text, e.g. a profile `f(x) + g(y)`; without LaTeX when it does not read back. */
 export function notationPiece(text: string): Piece {
   try {
-    return formula(text, latexTree(parseExpression(text)));
+    return formula(text, latexTree(readTree(text)));
   } catch {
     return formula(text);
   }
@@ -53,19 +55,12 @@ export function scalingPiece(scaling: Scaling | null): Piece {
   return text === '' ? formula('a^0', 'a^{0}') : formula(text, latex);
 }
 
-/** Coefficient times monomial as one expression that reads back; sums are put in parentheses. */
+/** Coefficient times monomial as one expression that reads back. */
 export function termPiece(
   space: JetSpace,
   { coefficient, monomial }: { readonly coefficient: Coefficient; readonly monomial: JetMonomial },
+  spacings: readonly string[],
 ): { readonly text: string; readonly latex: string } {
-  const text = printCoefficient(coefficient);
-  const latex = latexCoefficient(coefficient);
-  if (monomial === '') return { text, latex };
-  const m = printMonomial(space, monomial);
-  const latexM = latexMonomial(space, monomial);
-  if (coefficient.isOne) return { text: m, latex: latexM };
-  if (coefficient.neg().isOne) return { text: `-${m}`, latex: `-${latexM}` };
-  return coefficient.terms.length === 1
-    ? { text: `${text}*${m}`, latex: `${latex}\\,${latexM}` }
-    : { text: `(${text})*${m}`, latex: `\\left(${latex}\\right)${latexM}` };
+  const density = new Density(space, new Map([[monomial, coefficient]]));
+  return { text: printDensity(density, spacings), latex: latexDensity(density, spacings) };
 }

@@ -1,6 +1,7 @@
 // The machine-readable record of a check. Outside scripts rely on these keys: add keys freely, never rename one. The
 // same case gives the same bytes: nothing here depends on time, machine or the order of a hash.
 
+import type { Quotient } from '../exact/quotient.ts';
 import type { Rational } from '../exact/rational.ts';
 import type { ExpansionTerm, MultiOrder } from '../limit/expansion.ts';
 import type { JetSpace } from '../limit/jets.ts';
@@ -28,10 +29,10 @@ const byName = <T>(map: ReadonlyMap<string, T>): Record<string, T> => Object.fro
 
 const multiOrder = (order: MultiOrder): Record<string, number> => byName(order);
 
-function term(space: JetSpace, t: ExpansionTerm): object {
-  const whole = termPiece(space, t);
+function term(space: JetSpace, t: ExpansionTerm, spacings: readonly string[]): object {
+  const whole = termPiece(space, t, spacings);
   return {
-    coefficient: plainPiece(coefficientPiece(t.coefficient)),
+    coefficient: plainPiece(coefficientPiece(t.coefficient, spacings)),
     monomial: plainPiece(monomialPiece(space, t.monomial)),
     text: whole.text,
     latex: whole.latex,
@@ -39,14 +40,14 @@ function term(space: JetSpace, t: ExpansionTerm): object {
   };
 }
 
-function expansion({ expansion: e }: Analyses): object {
+function expansion({ expansion: e, case: theCase }: Analyses): object {
   return {
     through: e.through,
     fieldCut: e.fieldCut ?? null,
     orders: e.orders.map((o) => ({
       order: multiOrder(o.order),
       total: o.total,
-      terms: o.terms.map((t) => term(e.space, t)),
+      terms: o.terms.map((t) => term(e.space, t, theCase.lattice.limits)),
     })),
   };
 }
@@ -55,13 +56,14 @@ function expansion({ expansion: e }: Analyses): object {
 const allowed = (d: MatchingDifference): boolean | null =>
   d.forbiddenBy === undefined ? null : d.forbiddenBy === null;
 
-function matching({ matching: m, expansion: e }: Analyses): object | null {
+function matching({ matching: m, expansion: e, case: theCase }: Analyses): object | null {
   if (!m) return null;
+  const quotient = (q: Quotient): string => plainPiece(quotientPiece(q, theCase.lattice.limits));
   const row = (d: MatchingDifference): object => ({
     kind: d.kind,
     monomial: plainPiece(monomialPiece(e.space, d.monomial)),
-    parent: plainPiece(quotientPiece(d.parent)),
-    proposal: plainPiece(quotientPiece(d.proposal)),
+    parent: quotient(d.parent),
+    proposal: quotient(d.proposal),
     ratio: d.ratio ? exact(d.ratio) : null,
     order: d.order ?? null,
     allowed: allowed(d),
@@ -69,14 +71,10 @@ function matching({ matching: m, expansion: e }: Analyses): object | null {
   });
   return {
     origin: m.origin,
-    parameters: Object.fromEntries(
-      [...m.parameters].map(([name, q]) => [name, plainPiece(quotientPiece(q))]),
-    ),
+    parameters: Object.fromEntries([...m.parameters].map(([name, q]) => [name, quotient(q)])),
     differences: m.differences.filter((d) => d.kind !== 'agrees').map(row),
     agreements: m.differences.filter((d) => d.kind === 'agrees').map(row),
-    rescalings: Object.fromEntries(
-      [...m.rescalings].map(([field, q]) => [field, plainPiece(quotientPiece(q))]),
-    ),
+    rescalings: Object.fromEntries([...m.rescalings].map(([field, q]) => [field, quotient(q)])),
     scaling: Object.fromEntries(
       [...m.scaling].map(([name, powers]) => [
         name,

@@ -129,7 +129,7 @@ function findingItem(finding: Finding): { first: Pieces; more: Pieces[] } {
   return {
     first: [
       toned(LEVEL_TONES[finding.level], finding.level),
-      ' ',
+      ': ',
       ...prose(finding.statement),
       ` [${finding.rule}]`,
     ],
@@ -146,7 +146,7 @@ export function findingBlocks(report: CheckReport): Block[] {
   const items = [
     ...inOrder.map(findingItem),
     ...warnings.map(({ text, position }) => ({
-      first: [toned('warning', 'caution'), ` ${position.file}:${position.line}:${position.column}: ${text}`],
+      first: [toned('warning', 'caution'), `: ${position.file}:${position.line}:${position.column}: ${text}`],
       more: [],
     })),
   ];
@@ -161,10 +161,10 @@ export function reportDocument(report: CheckReport): Block[] {
     ...(analyses.case.title === '' ? [] : [paragraph(analyses.case.title)]),
     ...claimBlocks(report),
     ...findingBlocks(report),
-    ...matchingBlocks(analyses.matching, analyses.expansion),
+    ...matchingBlocks(analyses),
     ...symmetryBlocks(analyses),
     ...configurationBlocks(analyses),
-    ...expansionBlocks(analyses.expansion),
+    ...expansionBlocks(analyses),
     ...witnessBlocks(analyses),
     heading(2, 'What this does not prove'),
     paragraph(WHAT_IS_NOT_PROVED),

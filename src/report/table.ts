@@ -52,19 +52,20 @@ export interface Cell {
   readonly paint: (text: string) => string;
 }
 
-const MINIMUM = 6;
+/** Narrowest column that a table is squeezed to. */
+const NARROWEST = 6;
 
-/** Widths of the columns: natural ones, or the widest shrunk until the table fits. */
-function settle(natural: readonly number[], available: number): number[] {
-  const widths = [...natural];
-  let excess = widths.reduce((x, y) => x + y, 0) - available;
-  while (excess > 0) {
-    const widest = widths.indexOf(Math.max(...widths));
-    if (widths[widest]! <= MINIMUM) break;
-    widths[widest]!--;
-    excess--;
+const longestWord = (text: string): number => Math.max(...text.split(' ').map(columns));
+
+/** Takes columns away from the widest one, never below `least`, until the sum is `available` or nothing is left to take. */
+function shrink(widths: readonly number[], least: readonly number[], available: number): number[] {
+  const out = [...widths];
+  for (let excess = out.reduce((x, y) => x + y, 0) - available; excess > 0; excess--) {
+    const widest = out.reduce((best, w, i) => (w > least[i]! && (best < 0 || w > out[best]!) ? i : best), -1);
+    if (widest < 0) break;
+    out[widest]!--;
   }
-  return widths;
+  return out;
 }
 
 /** Lines of a table with a header and a rule below it, `indent` columns from the left, at most `width` columns wide
@@ -76,8 +77,13 @@ export function tableLines(
   indent = 2,
 ): string[] {
   const gap = 2;
-  const natural = head.map((h, i) => Math.max(columns(h), ...rows.map((row) => columns(row[i]?.text ?? ''))));
-  const widths = settle(natural, width - indent - gap * (head.length - 1));
+  const texts = head.map((h, i) => [h, ...rows.map((row) => row[i]?.text ?? '')]);
+  const available = width - indent - gap * (head.length - 1);
+  const natural = texts.map((column) => Math.max(...column.map(columns)));
+  // Words are broken only where breaking lines between words is not enough.
+  const whole = texts.map((column) => Math.max(...column.map(longestWord)));
+  const narrowest = texts.map(() => NARROWEST);
+  const widths = shrink(shrink(natural, whole, available), narrowest, available);
   const plain = (text: string): Cell => ({ text, paint: (t) => t });
   const draw = (row: readonly Cell[]): string[] => {
     const wrapped = widths.map((w, i) => wrap(row[i]?.text ?? '', w));

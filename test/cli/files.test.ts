@@ -1,7 +1,9 @@
-import { spawn } from 'node:child_process';
+import { spawn, spawnSync } from 'node:child_process';
 import {
+  closeSync,
   mkdirSync,
   mkdtempSync,
+  openSync,
   readdirSync,
   readFileSync,
   rmSync,
@@ -132,6 +134,17 @@ describe('the other side goes away', () => {
     const code = await new Promise((resolve) => child.on('close', resolve));
     expect(stderr).toBe('');
     expect(code).toBe(0);
+  });
+
+  test('a full disk behind standard output is said in one line', () => {
+    const full = openSync('/dev/full', 'w');
+    const { status, stderr } = spawnSync(process.execPath, [saltus.path, 'schema'], {
+      stdio: ['ignore', full, 'pipe'],
+      encoding: 'utf8',
+    });
+    closeSync(full);
+    expect(stderr).toBe('saltus: cannot write to standard output: ENOSPC\n');
+    expect(status).toBe(2);
   });
 
   test('an interrupt ends the run at once', async () => {

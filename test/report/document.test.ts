@@ -79,7 +79,7 @@ test('hostile text cannot leave its place in any format', async () => {
   const markdown = await renderMarkdown(blocks);
   expect(markdown).not.toContain('<script>');
   expect(markdown.split('\n').at(-2)).toBe(
-    '| a \\| b \\`c\\` &lt;script&gt; \\\\u\\{1b\\}\\[2J \\\\u\\{202e\\} \\$x\\$ \\[l\\](u) |',
+    '| a \\| b \\`c\\` &lt;script> \\\\u\\{1b\\}\\[2J \\\\u\\{202e\\} \\$x\\$ \\[l\\](u) |',
   );
 });
 

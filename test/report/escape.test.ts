@@ -57,7 +57,7 @@ test('JSON reads back to the same value and holds no raw control character', () 
 
 test('Markdown text cannot open HTML, code, a formula or a table cell', () => {
   expect(markdownText('<img src=x> & `a` | $x$ *b*')).toBe(
-    '&lt;img src=x&gt; &amp; \\`a\\` \\| \\$x\\$ \\*b\\*',
+    '&lt;img src=x> &amp; \\`a\\` \\| \\$x\\$ \\*b\\*',
   );
   expect(markdownText('# heading')).toBe('\\# heading');
   expect(markdownText('1. item')).toBe('1\\. item');

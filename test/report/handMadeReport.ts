@@ -32,7 +32,7 @@ const slope = space.monomial([
   { field: 0, derivative: [0, 1, 0] },
 ]);
 
-export const expansion: Expansion = {
+const expansion: Expansion = {
   space,
   through: 2,
   fieldCut: undefined,
@@ -157,7 +157,7 @@ const certificate = {
 };
 
 /** The case of the hand-made report, with another title where a test wants one. */
-export function handMadeCase(title = 'A sheet made by hand'): Case {
+function handMadeCase(title = 'A sheet made by hand'): Case {
   return {
     id: 'hand-made-sheet',
     title,

@@ -44,3 +44,13 @@ test('columns of a table are aligned', () => {
     ),
   ).toEqual(['  a     bb', '  ----  --', '  long  1', '  s     2']);
 });
+
+test('a narrow table breaks lines between words before it breaks a word', () => {
+  const lines = tableLines(['family', 'state'], [[cell('theta(x) theta(y)'), cell('unsuppressed')]], 24);
+  expect(lines).toEqual([
+    '  family    state',
+    '  --------  ------------',
+    '  theta(x)  unsuppressed',
+    '  theta(y)',
+  ]);
+});
