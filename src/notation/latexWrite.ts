@@ -86,7 +86,8 @@ function latexFactor(tree: Tree, isLast: boolean): string {
 
 function latexPower(base: Tree, exponent: Tree): string {
   const above = latexTree(exponent);
-  if (base.kind === 'call' && isFunction(base.name) && base.name !== 'sqrt' && exponent.kind === 'number')
+  const isWhole = exponent.kind === 'number' && exponent.value.isInteger && exponent.value.num > 1n;
+  if (base.kind === 'call' && isFunction(base.name) && base.name !== 'sqrt' && isWhole)
     return `\\${base.name}^{${above}}${latexArguments(base.args)}`;
   const isSimple =
     base.kind === 'symbol' ||

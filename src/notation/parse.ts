@@ -4,103 +4,16 @@
 // with both readings.
 
 import { Rational } from '../exact/rational.ts';
+import { Chain } from './chain.ts';
+import { type Part, partOf, shortened, spanOf } from './part.ts';
 import { NotationError } from './source.ts';
-import { type Sign, shortened, type Token, tokens } from './tokens.ts';
-import { FUNCTION_NAMES, isOperatorValued, rationalValue, type Span, type Tree } from './tree.ts';
+import { type Sign, type Token, tokens } from './tokens.ts';
+import { FUNCTION_NAMES, rationalValue, type Span, type Tree } from './tree.ts';
 
 /** Deepest nesting of parentheses, exponents and signs that is read. */
-export const DEEPEST_NESTING = 200;
-/** Tallest tree that is built; a/b/c/… makes a tree as tall as it is long. */
-export const TALLEST_TREE = 1000;
-
-/** A tree with what the text around it was: the span with its parentheses, and how tall it is. */
-interface Part {
-  readonly tree: Tree;
-  readonly span: Span;
-  readonly height: number;
-  readonly isOperator: boolean;
-  /** Set for base^exponent written without parentheses around it. */
-  readonly barePower?: { readonly base: Span; readonly exponent: Span };
-}
+const DEEPEST_NESTING = 200;
 
 const isFunction = (name: string): boolean => (FUNCTION_NAMES as readonly string[]).includes(name);
-
-/** One product under construction: factors so far, and operators that still wait for what they act on. */
-class Chain {
-  private factors: Part[] = [];
-  private run: Part[] = [];
-  constructor(
-    private readonly parser: Parser,
-    first: Part,
-  ) {
-    this.multiply(first, 'juxtaposed');
-  }
-
-  multiply(part: Part, how: '*' | 'juxtaposed'): void {
-    if (part.isOperator) this.run.push(part);
-    else if (this.run.length === 0) this.factors.push(part);
-    else {
-      const operator = this.product(this.run);
-      this.refuseUnclearOperand(operator, part, how);
-      const span = { start: operator.span.start, end: part.span.end };
-      const tree: Tree = { kind: 'apply', operator: operator.tree, operand: part.tree, span };
-      this.factors.push(this.parser.part(tree, span, [operator, part]));
-      this.run = [];
-    }
-  }
-
-  divide(denominator: Part): void {
-    if (denominator.isOperator)
-      throw new NotationError(
-        `an operator stands under a slash at "${this.parser.excerpt(denominator.span)}"`,
-        'put parentheses around the whole denominator, e.g. 1/(d_x phi); an operator itself has no inverse here',
-        denominator.span.start,
-      );
-    const onOperator = this.run.length > 0;
-    const numerator = this.product(onOperator ? this.run : this.factors);
-    const span = { start: numerator.span.start, end: denominator.span.end };
-    const tree: Tree = { kind: 'quotient', numerator: numerator.tree, denominator: denominator.tree, span };
-    const quotient = this.parser.part(tree, span, [numerator, denominator]);
-    if (onOperator) this.run = [quotient];
-    else this.factors = [quotient];
-  }
-
-  /** The last factor written, for messages. */
-  get last(): Part {
-    return (this.run.at(-1) ?? this.factors.at(-1))!;
-  }
-
-  finish(): Part {
-    return this.product([...this.factors, ...this.run]);
-  }
-
-  private product(parts: readonly Part[]): Part {
-    const first = parts[0]!;
-    if (parts.length === 1) return first;
-    const span = { start: first.span.start, end: parts.at(-1)!.span.end };
-    return this.parser.part({ kind: 'product', factors: parts.map((p) => p.tree), span }, span, parts);
-  }
-
-  private refuseUnclearOperand(operator: Part, operand: Part, how: '*' | 'juxtaposed'): void {
-    const d = this.parser.excerpt(operator.span);
-    const whole = this.parser.excerpt({ start: operator.span.start, end: operand.span.end });
-    if (how === '*')
-      throw new NotationError(
-        `"${whole}" has a * between an operator and what follows it`,
-        `write ${d} ${this.parser.excerpt(operand.span)} when the operator acts on it; factors stand before operators`,
-        operand.span.start,
-      );
-    if (operand.barePower) {
-      const base = this.parser.excerpt(operand.barePower.base);
-      const power = this.parser.excerpt(operand.barePower.exponent);
-      throw new NotationError(
-        `"${whole}" can mean (${d} ${base})${power} or ${d} (${base}${power})`,
-        'write one of them',
-        operator.span.start,
-      );
-    }
-  }
-}
 
 class Parser {
   private readonly tokens: readonly Token[];
@@ -121,18 +34,6 @@ class Parser {
 
   excerpt(span: Span): string {
     return shortened(this.text.slice(span.start, span.end));
-  }
-
-  /** A tree with its height. Throws NotationError when it grows too tall. */
-  part(tree: Tree, span: Span, parts: readonly Part[]): Part {
-    const height = 1 + Math.max(0, ...parts.map((p) => p.height));
-    if (height > TALLEST_TREE)
-      throw new NotationError(
-        `the expression is nested more than ${TALLEST_TREE} levels deep`,
-        'multiply its denominators out or split it into several terms',
-        span.start,
-      );
-    return { tree, span, height, isOperator: isOperatorValued(tree) };
   }
 
   private get token(): Token {
@@ -188,8 +89,7 @@ class Parser {
     const terms = [this.signed()];
     while (this.isSign('+', '-')) terms.push(this.signed());
     if (terms.length === 1) return terms[0]!;
-    const span = { start: terms[0]!.span.start, end: terms.at(-1)!.span.end };
-    return this.part({ kind: 'sum', terms: terms.map((t) => t.tree), span }, span, terms);
+    return partOf({ kind: 'sum', terms: terms.map((t) => t.tree), span: spanOf(terms) }, terms);
   }
 
   /** A product with the signs before it; a minus binds weaker than products and powers. */
@@ -207,11 +107,11 @@ class Parser {
     this.index++;
     const operand = this.nested(() => this.withSign(read));
     const span = { start, end: operand.span.end };
-    return this.part({ kind: 'negate', operand: operand.tree, span }, span, [operand]);
+    return partOf({ kind: 'negate', operand: operand.tree, span }, [operand]);
   }
 
   private product(): Part {
-    const chain = new Chain(this, this.power());
+    const chain = new Chain((span) => this.excerpt(span), this.power());
     while (true) {
       if (this.isSign('/')) {
         this.index++;
@@ -243,7 +143,7 @@ class Parser {
       string,
       string,
     ];
-    const whole = this.excerpt({ start: numerator.span.start, end: next.span.end });
+    const whole = this.excerpt(spanOf([numerator, next]));
     const [joint, rest] = next.isOperator ? [' ', ' …'] : ['*', ''];
     return new NotationError(
       `"${whole}" can mean (${n}/${d})${joint}${f}${rest} or ${n}/(${d}${joint}${f}${rest})`,
@@ -261,38 +161,30 @@ class Parser {
     const tree: Tree = { kind: 'power', base: base.tree, exponent: exponent.tree, span };
     this.refuseUnclearExponent(base, exponent);
     const barePower = { base: base.span, exponent: { start: base.span.end, end: exponent.span.end } };
-    return { ...this.part(tree, span, [base, exponent]), barePower };
+    return { ...partOf(tree, [base, exponent]), barePower };
   }
 
   private refuseUnclearExponent(base: Part, exponent: Part): void {
-    const [b, e] = [this.excerpt(base.span), this.excerpt(exponent.span)];
+    const { start } = base.span;
     const power = this.excerpt({ start: base.span.end, end: exponent.span.end });
-    const start = base.span.start;
+    const b = this.excerpt(base.span);
+    const e = power.startsWith('^') ? this.excerpt(exponent.span) : `${rationalValue(exponent.tree)}`;
+    const refuse = (problem: string): never => {
+      throw new NotationError(problem, 'write one of them', start);
+    };
     if (this.isSign('^') || this.token.kind === 'superscript')
-      throw new NotationError(
-        `a power of a power without parentheses can mean (${b}${power})^… or ${b}^(${e}^…)`,
-        'write one of them',
-        start,
-      );
+      refuse(`a power of a power without parentheses can mean (${b}${power})^… or ${b}^(${e}^…)`);
     const next = this.tokens[this.index + 1];
-    if (this.isSign('/') && this.isTight && power === '^1' && next?.kind === 'number')
-      throw new NotationError(
-        `"${this.excerpt({ start, end: next.span.end })}" can mean ${b}/${this.excerpt(next.span)} or ${b}^(1/${this.excerpt(next.span)})`,
-        'write one of them',
-        start,
-      );
-    if (
-      exponent.tree.kind === 'symbol' &&
-      this.isSign('(') &&
-      this.isTight &&
-      !power.endsWith(')') &&
-      !power.endsWith('}')
-    )
-      throw new NotationError(
-        `"${b}${power}(…)" can mean ${b}${power} (…) or ${b}^(${e}(…))`,
-        'write one of them',
-        start,
-      );
+    if (this.isSign('/') && this.isTight && power === '^1' && next?.kind === 'number') {
+      const n = this.excerpt(next.span);
+      refuse(`"${b}${power}/${n}" can mean ${b}/${n} or ${b}^(1/${n})`);
+    }
+    if (!this.isSign('(') || !this.isTight) return;
+    // f^2(x) and 2^n(x): as for f(x), white space says that a product is meant
+    if (exponent.tree.kind === 'symbol' && exponent.tree.span === exponent.span)
+      refuse(`"${b}${power}(…)" can mean ${b}${power} (…) or ${b}^(${e}(…))`);
+    if (base.tree.kind === 'symbol' && base.tree.span === base.span)
+      refuse(`"${b}${power}(…)" can mean ${b}${power} (…) or ${b}(…)${power}`);
   }
 
   /** What follows ^, or superscript digits; undefined when neither is there. */
@@ -310,8 +202,8 @@ class Parser {
   }
 
   private numberPart(value: Rational, span: Span): Part {
-    const size = this.part({ kind: 'number', value: value.abs(), span }, span, []);
-    return value.sign < 0 ? this.part({ kind: 'negate', operand: size.tree, span }, span, [size]) : size;
+    const size = partOf({ kind: 'number', value: value.abs(), span }, []);
+    return value.sign < 0 ? partOf({ kind: 'negate', operand: size.tree, span }, [size]) : size;
   }
 
   private exponentAtom(): Part {
@@ -319,7 +211,7 @@ class Parser {
     if (this.isSign('{')) return this.group('{', '}');
     if (token.kind === 'name' && !isFunction(token.name)) {
       this.index++;
-      return this.part({ kind: 'symbol', name: token.name, span: token.span }, token.span, []);
+      return partOf({ kind: 'symbol', name: token.name, span: token.span }, []);
     }
     if (token.kind === 'number' || this.isSign('(')) return this.primary();
     if (token.kind === 'name' || token.kind === 'operator')
@@ -339,16 +231,12 @@ class Parser {
         return this.numberPart(token.value, token.span);
       case 'operator':
         this.index++;
-        return this.part(
-          { kind: 'operator', name: token.name, axis: token.axis, span: token.span },
-          token.span,
-          [],
-        );
+        return partOf({ kind: 'operator', name: token.name, axis: token.axis, span: token.span }, []);
       case 'name':
         this.index++;
         if (isFunction(token.name)) return this.namedFunction(token.name, token.span);
         if (this.isSign('(') && this.isTight) return this.call(token.name, token.span.start);
-        return this.part({ kind: 'symbol', name: token.name, span: token.span }, token.span, []);
+        return partOf({ kind: 'symbol', name: token.name, span: token.span }, []);
       default:
         if (this.isSign('(')) return this.group('(', ')');
         throw this.unexpected();
@@ -387,7 +275,7 @@ class Parser {
     this.refuseUnclearFunctionPower(name, { start: span.start, end: exponent.span.end }, exponent);
     const call = this.call(name, span.start);
     const tree: Tree = { kind: 'power', base: call.tree, exponent: exponent.tree, span: call.span };
-    return this.part(tree, call.span, [call, exponent]);
+    return partOf(tree, [call, exponent]);
   }
 
   private refuseUnclearFunctionPower(name: string, span: Span, exponent: Part): void {
@@ -425,7 +313,7 @@ class Parser {
     if (isFunction(name) && args.length !== 1)
       throw new NotationError(`${name} takes one argument, not ${args.length}`, `write ${name}(…)`, start);
     const span = { start, end: this.previousEnd };
-    return this.part({ kind: 'call', name, args: args.map((a) => a.tree), span }, span, args);
+    return partOf({ kind: 'call', name, args: args.map((a) => a.tree), span }, args);
   }
 }
 

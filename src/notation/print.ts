@@ -65,8 +65,10 @@ function printProduct(factors: readonly Tree[]): string {
 }
 
 function printNumerator(tree: Tree): string {
-  const isChain = (tree.kind === 'product' && !isOperatorValued(tree)) || tree.kind === 'quotient';
-  return isChain ? printTree(tree) : atomOrPower(tree);
+  // x d_x phi/2 would leave the reader in doubt
+  const isPlainProduct =
+    tree.kind === 'product' && !isOperatorValued(tree) && tree.factors.at(-1)!.kind !== 'apply';
+  return isPlainProduct || tree.kind === 'quotient' ? printTree(tree) : atomOrPower(tree);
 }
 
 function printExponent(tree: Tree): string {

@@ -3,13 +3,14 @@
 
 import { Rational } from '../exact/rational.ts';
 import { GREEK_NAMES } from './greek.ts';
+import { shortened } from './part.ts';
 import { NotationError } from './source.ts';
 import type { OperatorName, Span } from './tree.ts';
 
 /** Longest text that is read, in UTF-16 units. */
-export const LONGEST_TEXT = 20_000;
+const LONGEST_TEXT = 20_000;
 /** Longest number that is read, in digits. */
-export const LONGEST_NUMBER = 10_000;
+const LONGEST_NUMBER = 10_000;
 
 export type Sign = '+' | '-' | '*' | '/' | '^' | '(' | ')' | '{' | '}' | ',';
 
@@ -242,12 +243,6 @@ class Scanner {
 
 /** T₀ and d₁ are numbered constants, as mu0 is; an axis is a letter. */
 const isNumbered = (head: string, small: string): boolean => head !== '∂' && /^[0-9]/.test(small);
-
-/** At most 40 characters of a text on one line, for messages. */
-export function shortened(text: string): string {
-  const line = text.replace(/\s+/g, ' ');
-  return line.length <= 40 ? line : `${line.slice(0, 30)}…${line.slice(-9)}`;
-}
 
 /** Tokens of a text, the last of kind `end`. Throws NotationError for a text that is too long, an unknown character or a
  *  number that is not exact. */

@@ -52,6 +52,9 @@ describe('products', () => {
   test('a name directly before a bracket is a call, with white space it is a factor', () => {
     expect(read('f(x, tau)')).toEqual(['call', 'f', x, 'symbol tau']);
     expect(read('delta_site(x)')).toEqual(['call', 'delta_site', x]);
+    expect(read('a^2 (x)')).toEqual(['product', ['power', a, '2'], x]);
+    expect(read('(a)^2(x)')).toEqual(read('a^2 (x)'));
+    expect(read('2^(b)(x)')).toEqual(['product', ['power', '2', b], x]);
     expect(read('a (x)')).toEqual(['product', a, x]);
     expect(read('cos (x)')).toEqual(['call', 'cos', x]);
     expect(read('cos^2(x)')).toEqual(['power', ['call', 'cos', x], '2']);
@@ -136,9 +139,11 @@ describe('what can be read in two ways is refused with both readings', () => {
     ['1/4π²', undefined, 0],
     ['1/2d_x phi', '"1/2d_x" can mean (1/2) d_x … or 1/(2 d_x …)', 0],
     ['a^b^x', 'a power of a power without parentheses can mean (a^b)^… or a^(b^…)', 0],
-    ['a²^x', 'a power of a power without parentheses can mean (a²)^… or a^(²^…)', 0],
+    ['a²^x', 'a power of a power without parentheses can mean (a²)^… or a^(2^…)', 0],
     ['a^1/2', '"a^1/2" can mean a/2 or a^(1/2)', 0],
     ['2^n(x)', '"2^n(…)" can mean 2^n (…) or 2^(n(…))', 0],
+    ['f^2(x)', '"f^2(…)" can mean f^2 (…) or f(…)^2', 0],
+    ['a φ²(x)', '"φ²(…)" can mean φ² (…) or φ(…)²', 2],
     ['cos^-1(x)', '"cos^-1(…)" can mean 1/cos(…) or the inverse function', 0],
   ])('%s', (text, problem, offset) => {
     const error = refusal(text);

@@ -60,6 +60,7 @@ describe('trees', () => {
     'Delta_x (phi^2)',
     'Lx + Ly - 1',
     'a^(1)/2',
+    '(x d_x phi)/2',
   ])('%s prints as it was written', (text) => {
     expect(printTree(readTree(text))).toBe(text);
   });
