@@ -1,17 +1,17 @@
 // The author's claims against what the analyses found. A claim holds, fails, or stays undecided with the reason; each
 // verdict comes with what was found, so that a failed claim says what is true instead.
 
-import { printQuotient } from '../notation/print.ts';
+import { torusShiftCount } from '../census/torus.ts';
 import type { Quotient } from '../exact/quotient.ts';
 import { Rational } from '../exact/rational.ts';
 import type { Expansion, ExpansionOrder } from '../limit/expansion.ts';
+import { Density } from '../limit/jets.ts';
+import { printDensity } from '../limit/printDensity.ts';
 import type { LinearForm } from '../model/action.ts';
 import type { Case } from '../model/case.ts';
 import type { Claim, Status } from '../model/claim.ts';
 import { spaceAxes, timeAxis } from '../model/geometry.ts';
-import { torusShiftCount } from '../census/torus.ts';
-import { printDensity } from '../limit/printDensity.ts';
-import { Density } from '../limit/jets.ts';
+import { printQuotient } from '../notation/print.ts';
 import type { Configuration, Scaling } from '../rough/profile.ts';
 import type { ClaimVerdict } from '../rules/facts.ts';
 import type { ShiftFamily } from '../symmetry/family.ts';
@@ -105,7 +105,9 @@ function decidePointGroup(
 ): Decision {
   const name = group.name === undefined ? '' : ` (${group.name})`;
   const continuum =
-    group.continuumOrder === null ? '' : `; of these lattice maps the continuum action keeps ${group.continuumOrder}`;
+    group.continuumOrder === null
+      ? ''
+      : `; of these lattice maps the continuum action keeps ${group.continuumOrder}`;
   const found = `the space part of the lattice point group has order ${group.order}${name}${continuum}`;
   const isRight =
     (claim.order === undefined || claim.order === group.order) &&
@@ -131,8 +133,7 @@ function decideConfiguration(
   claim: Extract<Claim, { kind: 'configuration' }>,
   configuration: Configuration,
 ): Decision {
-  if (configuration.undecided !== undefined)
-    return { verdict: 'undecided', found: configuration.undecided };
+  if (configuration.undecided !== undefined) return { verdict: 'undecided', found: configuration.undecided };
   const { suppressed, lattice, continuum } = configuration;
   const word = (is: boolean): string => (is ? 'suppressed' : 'not suppressed');
   const sides = [
@@ -169,7 +170,10 @@ function decideCorrections(claim: Extract<Claim, { kind: 'corrections' }>, evide
     const first = firstCorrection(expansion, spacings);
     if (first) {
       const order = [...first.order].reduce((sum, [s, n]) => (spacings.has(s) ? sum + n : sum), 0);
-      return holdsIf(order === begin, `corrections in ${name} begin at order ${order}: ${firstTerm(first, expansion)}`);
+      return holdsIf(
+        order === begin,
+        `corrections in ${name} begin at order ${order}: ${firstTerm(first, expansion)}`,
+      );
     }
     const none = `no correction in ${name} through order ${expansion.through}`;
     if (begin > expansion.through)
@@ -177,7 +181,11 @@ function decideCorrections(claim: Extract<Claim, { kind: 'corrections' }>, evide
     return { verdict: 'fails', found: none };
   });
   const verdicts = decisions.map((d) => d.verdict);
-  const verdict = verdicts.includes('fails') ? 'fails' : verdicts.includes('undecided') ? 'undecided' : 'holds';
+  const verdict = verdicts.includes('fails')
+    ? 'fails'
+    : verdicts.includes('undecided')
+      ? 'undecided'
+      : 'holds';
   return { verdict, found: decisions.map((d) => d.found).join('; ') };
 }
 
@@ -198,7 +206,10 @@ function censusSizes(dimension: number): number[][] {
 
 function decideCount(claim: Extract<Claim, { kind: 'count' }>, evidence: Evidence): Decision {
   if (claim.group !== 'U(1)')
-    return { verdict: 'undecided', found: `counts over ${claim.group} need the census, which this version does not have` };
+    return {
+      verdict: 'undecided',
+      found: `counts over ${claim.group} need the census, which this version does not have`,
+    };
   const { lattice, fields } = evidence.case;
   const axes = spaceAxes(lattice).map((k) => lattice.axes[k]!.name);
   const sizesList = censusSizes(axes.length);
@@ -207,7 +218,10 @@ function decideCount(claim: Extract<Claim, { kind: 'count' }>, evidence: Evidenc
     const { free } = torusShiftCount(evidence.latticeForms, lattice, fields, sizes);
     if (!formula.equals(Rational.of(free))) {
       const box = axes.map((x, i) => `L${x} = ${sizes[i]}`).join(', ');
-      return { verdict: 'fails', found: `at ${box} there are ${free} U(1) factors, the formula gives ${formula}` };
+      return {
+        verdict: 'fails',
+        found: `at ${box} there are ${free} U(1) factors, the formula gives ${formula}`,
+      };
     }
   }
   const range = `${sizesList[0]!.join('x')} to ${sizesList.at(-1)!.join('x')}`;

@@ -332,23 +332,21 @@ function fewestDerivatives(density: Density): number | undefined {
   return fewest;
 }
 
-/** Order from which a term's corrections are counted: its own leading order when `isLeading` accepts one of its leading
- *  monomials, else the leading order of an accepted term, the closest one that is not above in any spacing if possible. */
+/** Order from which a term's corrections are counted. A term that the proposal has counts from its own leading order. A
+ *  term that it lacks is a correction to the closest term that it has, if it lies above that one in every spacing;
+ *  otherwise it is a leading term in its own right, and missing. */
 function baseOrder(
   term: ExpandedTerm,
   all: readonly ExpandedTerm[],
   isAccepted: (t: ExpandedTerm) => boolean,
 ): MultiOrder | undefined {
   const own = term.leading?.order;
-  if (!own) return undefined;
-  if (isAccepted(term)) return own;
-  const others = all.filter((t) => t !== term && t.leading && isAccepted(t)).map((t) => t.leading!.order);
-  const cost = (base: MultiOrder): number => {
-    const differences = [...own].map(([s, n]) => n - base.get(s)!);
-    const below = differences.filter((d) => d < 0).reduce((x, y) => x - y, 0);
-    return below * 1000 + Math.abs(totalOf(own) - totalOf(base));
-  };
-  return others.sort((x, y) => cost(x) - cost(y))[0] ?? own;
+  if (!own || isAccepted(term)) return own;
+  const below = all
+    .filter((t) => t.leading && isAccepted(t))
+    .map((t) => t.leading!.order)
+    .filter((base) => [...own].every(([s, n]) => n >= base.get(s)!) && totalOf(own) > totalOf(base));
+  return below.sort((x, y) => totalOf(y) - totalOf(x))[0] ?? own;
 }
 
 /** Expansion of the parent action as a Lagrangian density (sum over cells → ∫ / cell volume).
