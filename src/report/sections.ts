@@ -177,7 +177,7 @@ export function briefDocument(report: CheckReport): Block[] {
   const faults = report.findings.filter((f) => f.level === 'fault').map(findingItem);
   const items = [...open, ...faults];
   return [
-    paragraph(...verdictPieces(report)),
+    heading(3, ...verdictPieces(report)),
     ...(items.length === 0 ? [] : [{ kind: 'list', items } as const]),
   ];
 }
