@@ -442,14 +442,18 @@ function collectOrders(
     .sort((x, y) => compareOrders(x.order, y.order));
 }
 
-/** Fewest fields first, then the term's place in the action, then the monomial's derivatives. */
-function sortTerms(terms: ExpansionTerm[], space: JetSpace): ExpansionTerm[] {
-  const key = (t: ExpansionTerm): string =>
-    space
-      .factors(t.monomial)
+/** Fewest fields first, then by the derivatives of the monomial. */
+function sortTerms(terms: readonly ExpansionTerm[], space: JetSpace): ExpansionTerm[] {
+  const keyed = terms.map((term) => ({
+    term,
+    key: space
+      .factors(term.monomial)
       .map((f) => f.derivative.join(','))
-      .join(';');
-  return terms.sort(
-    (x, y) => x.monomial.length - y.monomial.length || (key(x) < key(y) ? -1 : key(x) > key(y) ? 1 : 0),
+      .join(';'),
+  }));
+  keyed.sort(
+    (x, y) =>
+      x.term.monomial.length - y.term.monomial.length || (x.key < y.key ? -1 : x.key > y.key ? 1 : 0),
   );
+  return keyed.map((k) => k.term);
 }

@@ -22,7 +22,7 @@ export function visibleLines(text: string): string {
     .join('\n');
 }
 
-/** JSON of a value, two-space indent, a final newline; unsafe characters inside strings as \uXXXX. */
+/** JSON of a value, two-space indent, a final newline; unsafe characters inside strings as \u escapes. */
 export function safeJson(value: unknown): string {
   const units = (c: string): string =>
     Array.from({ length: c.length }, (_, i) => `\\u${c.charCodeAt(i).toString(16).padStart(4, '0')}`).join(

@@ -12,7 +12,10 @@ export type CoordinatePolynomial = readonly { readonly exponents: Exponents; rea
 export interface ShiftFamily {
   /** One amplitude per field of the case, in order. */
   readonly prefactor: readonly CoordinatePolynomial[];
-  /** ε(r) = exp(2πi Σ phase_k r_k); entries in [0, 1), one per axis. */
+  /** Names of the fields that the amplitudes belong to; may be left out when the case has a single field. */
+  readonly fields?: readonly string[];
+  /** ε(r) = exp(2πi Σ phase_k r_k); entries in [0, 1), one per axis. Where ε is not real, its real and its imaginary part
+   *  are both shifts. */
   readonly phase: readonly Rational[];
   /** Rows: the functionals ℓ_i, one integer entry per axis, including the time axis. Empty: no free function. */
   readonly free: readonly (readonly number[])[];
