@@ -2,20 +2,136 @@
 // → claims → findings. It orders the analyses and decides nothing itself.
 
 import { judgeClaim } from './claims/judge.ts';
-import { expandAction, type Expansion } from './limit/expansion.ts';
-import { Density } from './limit/jets.ts';
-import { matchProposal, type Matching, proposalDensity, proposeContinuum } from './limit/matching.ts';
+import { type Expansion, expandAction } from './limit/expansion.ts';
+import { Density, type JetMonomial } from './limit/jets.ts';
+import { type Matching, matchProposal, proposalDensity, proposeContinuum } from './limit/matching.ts';
 import { isEquivalent, normalForm } from './limit/normalForm.ts';
 import { printDensity } from './limit/printDensity.ts';
-import { type QuadraticSign, quadraticSign } from './limit/quadraticForm.ts';
-import { type LinearForm } from './model/action.ts';
+import { quadraticSign } from './limit/quadraticForm.ts';
 import type { Case, Proposal } from './model/case.ts';
-import type { CheckReport } from './report/findings.ts';
+import { linearForms } from './model/linearForms.ts';
+import { type CheckReport, isFailure } from './report/findings.ts';
+import { chargeEnergies } from './rough/charges.ts';
+import { analyseConfigurations } from './rough/configurations.ts';
 import { applyRules } from './rules/evaluate.ts';
 import type { Analyses, Verdict } from './rules/facts.ts';
 import type { Rule } from './rules/load.ts';
-import type { ShiftAnalysis } from './symmetry/family.ts';
-import { forbiddingSymmetry } from './symmetry/forbidden.ts';
-import { analysePointGroup, type PointGroupAnalysis } from './symmetry/pointGroup.ts';
 import { transformDensity } from './symmetry/continuumElement.ts';
-import { analyseShifts } from './symmetry/shifts.ts';
+import { forbiddingSymmetry } from './symmetry/forbidden.ts';
+import { analysePointGroup } from './symmetry/pointGroup.ts';
+import { analyseShifts, type CorrectionMonomial } from './symmetry/shifts.ts';
+import { runWitnesses } from './witness/run.ts';
+
+/** What an expansion is compared with: the author's proposal, or one made from the leading order. */
+interface Comparison {
+  readonly expansion: Expansion;
+  readonly proposal: Proposal;
+  readonly matching: Matching;
+  /** Normal form of the proposal in its own parameters. */
+  readonly continuum: Density;
+}
+
+function expandAndMatch(theCase: Case): Comparison {
+  if (theCase.proposal) {
+    let continuum: Density | undefined;
+    const expansion = expandAction(theCase, (space) => {
+      continuum = proposalDensity(theCase, space)!;
+      return (m) => continuum!.terms.has(m);
+    });
+    const matching = matchProposal(theCase, expansion, theCase.proposal);
+    return { expansion, proposal: theCase.proposal, matching, continuum: continuum! };
+  }
+  const expansion = expandAction(theCase);
+  const proposal = proposeContinuum(theCase, expansion);
+  const proposed = { ...theCase, proposal };
+  const matching: Matching = { ...matchProposal(proposed, expansion, proposal), origin: 'proposed' };
+  return { expansion, proposal, matching, continuum: proposalDensity(proposed, expansion.space)! };
+}
+
+/** Monomials of all orders beyond the leading one, lowest first. */
+function correctionMonomials({ orders, space }: Expansion): CorrectionMonomial[] {
+  return orders
+    .filter((o) => o.total > 0)
+    .flatMap((o) =>
+      o.terms.map(({ monomial, coefficient }) => ({
+        order: o.total,
+        text: printDensity(new Density(space, new Map([[monomial, coefficient]]))),
+        derivatives: space.factors(monomial),
+        coefficient,
+      })),
+    );
+}
+
+/** True when the density that consists of one monomial is a total derivative. */
+const isTotalDerivative = (density: Density): boolean => normalForm(density).isZero;
+
+/** Adds to every term that only the proposal has the exact lattice symmetry that forbids it. */
+function explainDifferences(matching: Matching, forbids: (monomial: JetMonomial) => string | null): Matching {
+  const differences = matching.differences.map((d) =>
+    d.kind === 'only-in-proposal' ? { ...d, forbiddenBy: forbids(d.monomial) } : d,
+  );
+  return { ...matching, differences };
+}
+
+/** Checks one case against the rules. Throws LimitError where a stated limit is hit. */
+export function checkCase(theCase: Case, rules: readonly Rule[]): CheckReport {
+  const { lattice, fields, parent } = theCase;
+  const { expansion, proposal, matching: bare, continuum } = expandAndMatch(theCase);
+  const latticeForms = parent.terms.flatMap((t) => linearForms(t.expression));
+  const continuumForms = linearForms(proposal.lagrangian);
+  const shifts = analyseShifts({
+    lattice,
+    fields,
+    latticeForms,
+    continuumForms,
+    corrections: correctionMonomials(expansion),
+  });
+  const pointGroup = analysePointGroup({
+    lattice,
+    fields,
+    terms: parent.terms,
+    continuum: (element) => isEquivalent(transformDensity(continuum, element), continuum),
+  });
+  const { space } = expansion;
+  const matching = explainDifferences(bare, (monomial) =>
+    forbiddingSymmetry(monomial, { space, lattice, pointGroup, shifts, isTotalDerivative }),
+  );
+  const setting = { case: theCase, expansion, matching, proposalDensity: continuum, shifts };
+  const { configurations, byClaim } = analyseConfigurations(setting);
+  const evidence = {
+    case: theCase,
+    latticeForms,
+    continuumForms,
+    expansion,
+    pointGroup,
+    configurations: byClaim,
+  };
+  const analyses: Analyses = {
+    case: theCase,
+    expansion,
+    matching,
+    shifts,
+    pointGroup,
+    configurations,
+    charges: chargeEnergies(setting),
+    witness: runWitnesses({ ...setting, configurations }),
+    claims: theCase.claims.map((claim) => judgeClaim(claim, evidence)),
+    quadraticForm: quadraticSign(continuum, positiveNames(theCase, proposal)),
+  };
+  return withVerdict({ analyses, findings: applyRules(rules, analyses), verdict: 'holds' });
+}
+
+/** Generators that the author declared positive; spacings always are. */
+function positiveNames(theCase: Case, proposal: Proposal): Set<string> {
+  const declared = [...theCase.parameters, ...proposal.parameters].filter((p) => p.positive);
+  return new Set([...declared.map((p) => p.name), ...theCase.lattice.limits]);
+}
+
+function withVerdict(report: CheckReport): CheckReport {
+  const { claims, matching } = report.analyses;
+  const mismatch =
+    report.analyses.case.proposal !== undefined && matching?.differences.some((d) => d.kind !== 'agrees');
+  const isOpen = claims.some((c) => c.verdict === 'undecided') || (matching?.undetermined.length ?? 0) > 0;
+  const verdict: Verdict = mismatch || isFailure(report) ? 'fails' : isOpen ? 'undecided' : 'holds';
+  return { ...report, verdict };
+}

@@ -31,7 +31,7 @@ export function rootPowers(n: number): readonly (readonly number[])[] {
   const modulus = cyclotomicPolynomial(n);
   const degree = modulus.length - 1;
   const powers: number[][] = [];
-  let current = Array.from({ length: degree }, (_, i) => (i === 0 ? 1 : 0));
+  let current: number[] = Array.from({ length: degree }, (_, i) => (i === 0 ? 1 : 0));
   for (let k = 0; k < n; k++) {
     powers.push(current);
     const top = current[degree - 1]!;

@@ -4,7 +4,8 @@
 
 import type { Coefficient } from '../exact/coefficient.ts';
 import type { LaurentPolynomial } from '../exact/laurentPolynomial.ts';
-import type { FunctionName, Span } from '../notation/tree.ts';
+import type { SourcePosition } from '../notation/source.ts';
+import type { FunctionName } from '../notation/tree.ts';
 
 /** u = Σ_j D_j φ_j, by field name; no zero operators. */
 export type LinearForm = ReadonlyMap<string, LaurentPolynomial>;
@@ -24,5 +25,6 @@ export interface ActionTerm {
   readonly expression: Expression;
   /** The string as written. */
   readonly text: string;
-  readonly span?: Span;
+  /** Where the string stands in the case file. */
+  readonly position?: SourcePosition;
 }

@@ -1,7 +1,7 @@
 // The author's claims, as read from a case file. A claim is judged in src/claims/, after the analyses.
 
-import type { Tree } from '../notation/tree.ts';
 import type { SourcePosition } from '../notation/source.ts';
+import type { Tree } from '../notation/tree.ts';
 
 export type Status = 'survives' | 'continuum-only' | 'lattice-only' | 'absent';
 
@@ -19,7 +19,12 @@ interface ClaimBase {
 
 export type Claim = ClaimBase &
   (
-    | { readonly kind: 'shift'; readonly profile: ProfileText; readonly field: string; readonly status: Status }
+    | {
+        readonly kind: 'shift';
+        readonly profile: ProfileText;
+        readonly field: string;
+        readonly status: Status;
+      }
     | {
         readonly kind: 'point-group';
         readonly order: number | undefined;
@@ -30,7 +35,10 @@ export type Claim = ClaimBase &
         readonly kind: 'configuration';
         readonly profile: ProfileText;
         readonly field: string;
-        readonly suppressed: { readonly continuum: boolean | undefined; readonly lattice: boolean | undefined };
+        readonly suppressed: {
+          readonly continuum: boolean | undefined;
+          readonly lattice: boolean | undefined;
+        };
         /** Claimed exponents of a and ℓ, as exact rationals in text form, when given. */
         readonly exponent: { readonly a: string; readonly l: string } | undefined;
         readonly truncates: boolean | undefined;

@@ -23,16 +23,14 @@ const exact = (rows: readonly (readonly number[])[]): Rational[][] =>
 const transpose = (rows: readonly (readonly number[])[], columns: number): number[][] =>
   Array.from({ length: columns }, (_, c) => rows.map((r) => r[c]!));
 
-const matrices = fc
-  .tuple(fc.integer({ min: 1, max: 6 }), fc.integer({ min: 1, max: 6 }))
-  .chain(([n, m]) =>
-    fc
-      .array(fc.array(fc.integer({ min: -3, max: 3 }), { minLength: m, maxLength: m }), {
-        minLength: n,
-        maxLength: n,
-      })
-      .map((rows) => ({ rows, columns: m })),
-  );
+const matrices = fc.tuple(fc.integer({ min: 1, max: 6 }), fc.integer({ min: 1, max: 6 })).chain(([n, m]) =>
+  fc
+    .array(fc.array(fc.integer({ min: -3, max: 3 }), { minLength: m, maxLength: m }), {
+      minLength: n,
+      maxLength: n,
+    })
+    .map((rows) => ({ rows, columns: m })),
+);
 
 /** Rank by the largest non-zero minor, with determinants expanded along the first row. */
 function rankByMinors(rows: readonly (readonly number[])[], columns: number): number {
@@ -49,13 +47,10 @@ function rankByMinors(rows: readonly (readonly number[])[], columns: number): nu
   const choices = (n: number, k: number): number[][] =>
     k === 0
       ? [[]]
-      : Array.from({ length: n }, (_, i) => i).flatMap((i) =>
-          choices(i, k - 1).map((rest) => [...rest, i]),
-        );
+      : Array.from({ length: n }, (_, i) => i).flatMap((i) => choices(i, k - 1).map((rest) => [...rest, i]));
   for (let k = Math.min(rows.length, columns); k > 0; k--)
     for (const r of choices(rows.length, k))
-      for (const c of choices(columns, k))
-        if (det(r.map((i) => c.map((j) => rows[i]![j]!))) !== 0) return k;
+      for (const c of choices(columns, k)) if (det(r.map((i) => c.map((j) => rows[i]![j]!))) !== 0) return k;
   return 0;
 }
 
