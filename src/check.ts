@@ -94,7 +94,7 @@ export function checkCase(theCase: Case, rules: readonly Rule[]): CheckReport {
   });
   const { space } = expansion;
   const matching = explainDifferences(bare, (monomial) =>
-    forbiddingSymmetry(monomial, { space, lattice, pointGroup, shifts, isTotalDerivative }),
+    forbiddingSymmetry(monomial, { space, lattice, fields, pointGroup, shifts, isTotalDerivative }),
   );
   const setting = { case: theCase, expansion, matching, proposalDensity: continuum, shifts };
   const { configurations, byClaim } = analyseConfigurations(setting);

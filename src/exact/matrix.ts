@@ -26,7 +26,7 @@ export class PrimeField {
 
   multiply(x: number, y: number): number {
     const product = x * y;
-    const rest = product - Math.floor(product * this.reciprocal * 1.00001) * this.p;
+    const rest = product - Math.floor(product * this.reciprocal) * this.p;
     return rest < 0 ? rest + this.p : rest >= this.p ? rest - this.p : rest;
   }
   /** Throws RangeError for 0. */

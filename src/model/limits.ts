@@ -1,9 +1,14 @@
-// The limits on what is read, in one place. Beyond them a file is refused with a message, never with a crash.
+// The limits on what is read, in one place. Beyond them a file is refused with a message, never with a crash. They are far
+// above what a case needs and low enough that a hostile file costs about a second at most.
 
 /** Largest case file in bytes. */
 export const LARGEST_FILE = 1_048_576;
-/** Deepest nesting of maps and lists in a case file. */
+/** Deepest nesting of maps and lists in a case file; a case needs six. */
 export const DEEPEST_YAML = 50;
+/** Longest identifier or name, in characters. */
+export const LONGEST_NAME = 40;
+/** Longest title, in characters. */
+export const LONGEST_TITLE = 500;
 /** Most axes: 1 to 4 space-time dimensions. */
 export const MOST_AXES = 4;
 export const MOST_FIELDS = 8;
@@ -14,3 +19,15 @@ export const MOST_CLAIMS = 200;
 export const HIGHEST_ORDER = 16;
 /** Largest number of field factors that may be asked for. */
 export const MOST_FIELD_FACTORS = 16;
+/** Largest modulus of a residue field. */
+export const LARGEST_MODULUS = 1_000_000;
+/** Largest exponent of fields and operators, after powers of powers are multiplied out. */
+export const HIGHEST_POWER = 24;
+/** Largest exponent of numbers and parameters. */
+export const HIGHEST_CONSTANT_POWER = 1000;
+/** Longest number that arithmetic on constants may produce, in bits. */
+export const LONGEST_NUMBER_BITS = 200_000;
+/** Most terms of one coefficient or one operator. */
+export const MOST_POLYNOMIAL_TERMS = 500;
+/** Most parts of one expression, after operators on products are written out. */
+export const MOST_EXPRESSION_PARTS = 5000;

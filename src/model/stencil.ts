@@ -43,3 +43,17 @@ export function moment(
     }, Coefficient.zero)
     .scale(factorials.inv());
 }
+
+/** Centre of the bounding box of the supports of some stencils, in lattice units: integers and half-integers. The origin
+ *  when all of them are zero. Throws RangeError without a stencil. */
+export function supportCentre(...stencils: readonly LaurentPolynomial[]): Rational[] {
+  const [first] = stencils;
+  if (!first) throw new RangeError('no stencil is given');
+  const sites = stencils.flatMap((s) => s.terms.map((t) => t.exponents));
+  return Array.from({ length: first.dimension }, (_, k) => {
+    if (sites.length === 0) return Rational.zero;
+    const along = sites.map((v) => v[k]!);
+    const [low, high] = [Math.min(...along), Math.max(...along)];
+    return rational(low + high, 2);
+  });
+}

@@ -44,6 +44,22 @@ describe('the correction that breaks a shift', () => {
     expect(first(family([0, 0]), monomial(2, undefined, [1, 0], [1, 0], [1, 0]))).toBeNull();
   });
 
+  it('adds quadratic monomials whose effects cancel', () => {
+    // ∂_x^4 λ + ∂_y^4 λ = 0 for λ = x^4 - y^4
+    const quartic: ShiftFamily = {
+      ...family([4, 0]),
+      prefactor: [
+        [
+          { exponents: [4, 0], weight: Coefficient.one },
+          { exponents: [0, 4], weight: Coefficient.integer(-1) },
+        ],
+      ],
+    };
+    const order = (c: number | undefined) => [monomial(2, c, [2, 0], [2, 0]), monomial(2, c, [0, 2], [0, 2])];
+    expect(first(quartic, ...order(1))).toBeNull();
+    expect(first(quartic, ...order(undefined))).toEqual({ text: '20 20', order: 2 });
+  });
+
   // A. Nicolis, R. Rattazzi, E. Trincherini, Phys. Rev. D 79 (2009) 064036: the cubic galileon (∂φ)² □φ is invariant under
   // φ → φ + b·x up to a total derivative
   it('adds monomials of one order when their coefficients are known: the galileon keeps linear shifts', () => {

@@ -1,0 +1,86 @@
+// Which exact symmetry of the lattice forbids a monomial of a continuum Lagrangian. A point element forbids it when it maps it
+// to minus itself up to a total derivative, the whole group when the average over the group (Reynolds operator) is a total
+// derivative, a continuous shift when the first variation is none: being so for every field, the first order decides the
+// finite shift as well.
+
+import { Coefficient } from '../exact/coefficient.ts';
+import { Density, type JetMonomial, type JetSpace } from '../limit/jets.ts';
+import { type Field, type Lattice, timeAxis } from '../model/geometry.ts';
+import { variationForms } from './brokenShift.ts';
+import { transformDensity } from './continuumElement.ts';
+import type { ShiftAnalysis } from './family.ts';
+import { elementText, type PointElement, type PointGroupAnalysis } from './pointGroup.ts';
+import { testShiftFamily } from './shiftTest.ts';
+
+export interface LatticeSymmetries {
+  readonly space: JetSpace;
+  readonly lattice: Lattice;
+  readonly fields: readonly Field[];
+  readonly pointGroup: PointGroupAnalysis;
+  readonly shifts: ShiftAnalysis;
+  readonly isTotalDerivative: (density: Density) => boolean;
+}
+
+/** The symmetry that forbids the monomial, in words, or null when none does: then nothing protects against it and it will be
+ *  generated. Symmetries with a smooth parameter only: staggered shifts do not act on continuum fields. */
+export function forbiddingSymmetry(monomial: JetMonomial, symmetries: LatticeSymmetries): string | null {
+  const density = new Density(symmetries.space, new Map([[monomial, Coefficient.one]]));
+  return forbiddingShift(density, symmetries) ?? forbiddingPeriod(density, symmetries) ?? forbiddingMap(density, symmetries);
+}
+
+function forbiddingShift(density: Density, { space, shifts, fields }: LatticeSymmetries): string | undefined {
+  const forms = variationForms(density, space.fields);
+  const family = shifts.symmetries.find(
+    ({ lattice, family: f }) =>
+      lattice &&
+      f.discrete === undefined &&
+      f.phase.every((p) => p.isZero) &&
+      !testShiftFamily(f, forms, 'continuum'),
+  )?.family;
+  if (!family) return undefined;
+  const moved = fields.filter((_, i) => (family.prefactor[i]?.length ?? 0) > 0).map((f) => f.name);
+  return moved.length === 1 ? `the shift ${moved[0]} -> ${moved[0]} + ${family.profile}` : `the shift by ${family.profile}`;
+}
+
+/** A polynomial in an undifferentiated angle is not periodic, whatever the action. */
+function forbiddingPeriod(density: Density, { space, fields }: LatticeSymmetries): string | undefined {
+  for (const monomial of density.terms.keys())
+    for (const { field, derivative } of space.factors(monomial))
+      if (fields[field]!.values.kind === 'angle' && derivative.every((n) => n === 0))
+        return `the period ${space.fields[field]} -> ${space.fields[field]} + 2 pi, which allows periodic functions only`;
+  return undefined;
+}
+
+function forbiddingMap(density: Density, symmetries: LatticeSymmetries): string | null {
+  const { pointGroup, isTotalDerivative } = symmetries;
+  const flips = pointGroup.elements.filter((e) =>
+    isTotalDerivative(transformDensity(density, e).add(density)),
+  );
+  if (flips.length > 0) return simplest(flips, symmetries);
+  const average = pointGroup.elements.reduce(
+    (sum, e) => sum.add(transformDensity(density, e)),
+    Density.zero(symmetries.space),
+  );
+  return isTotalDerivative(average) ? 'the point group as a whole' : null;
+}
+
+/** The element that changes least, in words. */
+function simplest(elements: readonly PointElement[], { lattice, fields }: LatticeSymmetries): string {
+  const names = lattice.axes.map((x) => x.name);
+  const describe = (e: PointElement): string => {
+    const map = elementText(e.matrix, names);
+    const signs = e.fields.flatMap((image, i) =>
+      image.field === i && image.sign === 1
+        ? []
+        : [`${fields[i]!.name} -> ${image.sign < 0 ? '-' : ''}${fields[image.field]!.name}`],
+    );
+    return [...(map === 'identity' ? [] : [map]), ...signs].join(' with ');
+  };
+  const time = timeAxis(lattice);
+  const isTimeOnly = (e: PointElement): boolean =>
+    e.matrix.every((row, i) => row[i] === 1 || (i === time && row[i] === -1));
+  const kind = (e: PointElement): string =>
+    e.matrix.every((row, i) => row[i] === 1) ? 'the field reflection' : isTimeOnly(e) ? 'the time reflection' : 'the lattice map';
+  const sorted = [...elements].sort((x, y) => describe(x).length - describe(y).length);
+  return `${kind(sorted[0]!)} ${describe(sorted[0]!)}`;
+}
