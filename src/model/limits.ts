@@ -1,5 +1,5 @@
 // The limits on what is read, in one place. Beyond them a file is refused with a message, never with a crash. They are far
-// above what a case needs and low enough that a hostile file costs about a second at most.
+// above what a case needs and low enough that a hostile file is refused soon.
 
 /** Largest case file in bytes. */
 export const LARGEST_FILE = 1_048_576;
@@ -19,15 +19,17 @@ export const MOST_CLAIMS = 200;
 export const HIGHEST_ORDER = 16;
 /** Largest number of field factors that may be asked for. */
 export const MOST_FIELD_FACTORS = 16;
-/** Largest modulus of a residue field. */
-export const LARGEST_MODULUS = 1_000_000;
 /** Largest exponent of fields and operators, after powers of powers are multiplied out. */
 export const HIGHEST_POWER = 24;
+/** Longest step of a shift, and highest order of a derivative, along one axis. */
+export const LONGEST_REACH = 64;
 /** Largest exponent of numbers and parameters. */
 export const HIGHEST_CONSTANT_POWER = 1000;
-/** Longest number that arithmetic on constants may produce, in bits. */
-export const LONGEST_NUMBER_BITS = 200_000;
-/** Most terms of one coefficient or one operator. */
-export const MOST_POLYNOMIAL_TERMS = 500;
+/** Numbers that arithmetic on constants produces stay below two to this power; one that is read has 10,000 digits at most. */
+export const LONGEST_NUMBER_BITS = 40_000;
+/** Most terms of one coefficient. */
+export const MOST_COEFFICIENT_TERMS = 200;
+/** Most terms of one operator. */
+export const MOST_OPERATOR_TERMS = 1000;
 /** Most parts of one expression, after operators on products are written out. */
 export const MOST_EXPRESSION_PARTS = 5000;

@@ -1,399 +1,342 @@
-// From the tree of a string to its meaning in a case: exact constants, operators, and expressions in linear forms of the
-// fields. Constants are folded and linear forms merged on the way, so that equal expressions look alike.
+// From the tree of a string to its meaning: operators, and expressions in linear forms of the fields. On the lattice an
+// operator is a stencil, in the continuum a polynomial in the derivatives.
 
 import { Coefficient } from '../exact/coefficient.ts';
 import { LaurentPolynomial } from '../exact/laurentPolynomial.ts';
 import { Quotient } from '../exact/quotient.ts';
 import { type Rational, rational } from '../exact/rational.ts';
-import { NotationError } from '../notation/source.ts';
-import { FUNCTION_NAMES, type FunctionName, rationalValue, type Span, type Tree } from '../notation/tree.ts';
+import { type FunctionName, isOperatorValued, type Tree } from '../notation/tree.ts';
 import type { Expression, LinearForm } from './action.ts';
-import { type Names, unknownFunction, unknownName } from './names.ts';
+import { boundedOperatorProduct, boundedPower } from './bounds.ts';
+import {
+  constantPower,
+  exactly,
+  exponentOf,
+  functionOfConstant,
+  isFunctionName,
+  onlyArgument,
+  readCoefficient,
+  refuse,
+  valueAtConstant,
+} from './constants.ts';
+import {
+  composed,
+  constantOf,
+  highestPower,
+  partCount,
+  powerOf,
+  productOf,
+  shifted,
+  sumOf,
+  valueOnConstants,
+} from './expression.ts';
+import { HIGHEST_POWER, LONGEST_REACH, MOST_EXPRESSION_PARTS } from './limits.ts';
+import { type Names, unknownFunction } from './names.ts';
 import { elementaryOperator } from './stencil.ts';
 
-/** Largest integer power that is read; larger ones would only exhaust memory. */
-const HIGHEST_POWER = 24;
+type Kind = 'lattice' | 'continuum';
 
-/** Runs exact arithmetic and turns what it cannot do into an error at the place. */
-function exactly<T>(span: Span, compute: () => T): T {
-  try {
-    return compute();
-  } catch (error) {
-    if (!(error instanceof RangeError)) throw error;
-    throw new NotationError(error.message, 'rewrite the expression so that it stays exact', span.start);
+/** A term of a lattice action: stencils act on the fields. Throws NotationError with the offset of what is wrong. */
+export const readLatticeExpression = (tree: Tree, names: Names): Expression =>
+  new Reader(names, 'lattice').whole(tree);
+
+/** A Lagrangian: derivatives act on the fields. Throws NotationError with the offset of what is wrong. */
+export const readContinuumExpression = (tree: Tree, names: Names): Expression =>
+  new Reader(names, 'continuum').whole(tree);
+
+class Reader {
+  constructor(
+    private readonly names: Names,
+    private readonly kind: Kind,
+  ) {}
+
+  whole(tree: Tree): Expression {
+    const expression = this.expression(tree);
+    if (partCount(expression) > MOST_EXPRESSION_PARTS)
+      return this.tooLarge(tree);
+    return expression;
   }
-}
 
-/** A field-free expression: declared constants, pi, square roots, rational powers. Throws NotationError. */
-export function readQuotient(tree: Tree, names: Names): Quotient {
-  const recurse = (t: Tree): Quotient => readQuotient(t, names);
-  switch (tree.kind) {
-    case 'number':
-      return Quotient.of(Coefficient.rational(tree.value));
-    case 'symbol':
-      if (tree.name !== 'pi' && !names.constants.has(tree.name)) {
-        if (names.fields.includes(tree.name))
-          throw new NotationError(
-            `the field "${tree.name}" stands where a constant belongs`,
-            'use parameters and spacings only',
-            tree.span.start,
-          );
-        throw unknownName(tree.name, tree.span, names);
+  private tooLarge(tree: Tree): never {
+    return refuse(
+      `this has more than ${MOST_EXPRESSION_PARTS} parts when it is written out`,
+      'split it into several terms',
+      tree.span,
+    );
+  }
+
+  private expression(tree: Tree): Expression {
+    if (!this.holdsField(tree)) return constantOf(readCoefficient(tree, this.names));
+    const recurse = (t: Tree): Expression => this.expression(t);
+    switch (tree.kind) {
+      case 'symbol': {
+        const identity = LaurentPolynomial.constant(this.names.axes.length, Coefficient.one);
+        return { kind: 'linear', form: new Map([[tree.name, identity]]) };
       }
-      return Quotient.of(Coefficient.symbol(tree.name));
-    case 'sum':
-      return tree.terms.map(recurse).reduce((x, y) => x.add(y));
-    case 'negate':
-      return recurse(tree.operand).neg();
-    case 'product':
-      return tree.factors.map(recurse).reduce((x, y) => x.mul(y));
-    case 'quotient': {
-      const denominator = recurse(tree.denominator);
-      if (denominator.isZero)
-        throw new NotationError(
-          'the denominator is zero',
-          'divide by something else',
-          tree.denominator.span.start,
-        );
-      return recurse(tree.numerator).div(denominator);
+      case 'apply':
+        return this.applied(tree);
+      case 'sum':
+        return exactly(tree.span, () => sumOf(tree.terms.map(recurse)));
+      case 'negate':
+        return exactly(tree.span, () => productOf([minusOne, recurse(tree.operand)]));
+      case 'product':
+        return this.withinPowers(exactly(tree.span, () => productOf(tree.factors.map(recurse))), tree);
+      case 'quotient':
+        return this.quotient(tree);
+      case 'power':
+        return this.power(tree);
+      case 'call':
+        if (!isFunctionName(tree.name)) throw unknownFunction(tree.name, tree.span, this.names);
+        return this.call(tree.name, recurse(onlyArgument(tree)), tree);
+      case 'number':
+      case 'operator':
+        return refuse('an operator has nothing to act on', 'write the field after it', tree.span);
     }
-    case 'power': {
-      const base = recurse(tree.base);
-      const exponent = exponentOf(tree.exponent);
-      if (base.isZero && exponent.sign < 0)
-        throw new NotationError(
-          'zero has no negative power',
-          'correct the base or the exponent',
-          tree.base.span.start,
-        );
-      return exactly(tree.span, () => base.pow(exponent));
+  }
+
+  /** True when a field occurs, or an operator acts on something. */
+  private holdsField(tree: Tree): boolean {
+    const recurse = (t: Tree): boolean => this.holdsField(t);
+    switch (tree.kind) {
+      case 'number':
+        return false;
+      case 'symbol':
+        return this.names.fields.includes(tree.name);
+      case 'operator':
+      case 'apply':
+        return true;
+      case 'call':
+        return tree.args.some(recurse) || this.names.fields.includes(tree.name);
+      case 'sum':
+        return tree.terms.some(recurse);
+      case 'product':
+        return tree.factors.some(recurse);
+      case 'negate':
+        return recurse(tree.operand);
+      case 'quotient':
+        return recurse(tree.numerator) || recurse(tree.denominator);
+      case 'power':
+        return recurse(tree.base);
     }
-    case 'call':
-      if (tree.name === 'sqrt') {
-        const argument = recurse(onlyArgument(tree));
-        return exactly(tree.span, () => argument.pow(rational(1, 2)));
-      }
-      if (!(FUNCTION_NAMES as readonly string[]).includes(tree.name))
-        throw unknownFunction(tree.name, tree.span, names);
-      return Quotient.of(functionOfConstant(tree, recurse(onlyArgument(tree))));
-    case 'operator':
-    case 'apply':
-      throw new NotationError(
-        'an operator stands where a constant belongs',
-        'use parameters and spacings only',
-        tree.span.start,
+  }
+
+  private quotient(tree: Extract<Tree, { kind: 'quotient' }>): Expression {
+    const numerator = this.expression(tree.numerator);
+    const denominator = this.expression(tree.denominator);
+    if (denominator.kind === 'constant' && denominator.value.isZero)
+      return refuse('the denominator is zero', 'divide by something else', tree.denominator.span);
+    const inverse = this.inverse(denominator, tree.denominator);
+    return this.withinPowers(exactly(tree.span, () => productOf([numerator, inverse])), tree);
+  }
+
+  private inverse(e: Expression, tree: Tree): Expression {
+    this.refuseNegativePower(e, tree);
+    return exactly(tree.span, () => powerOf(e, -1));
+  }
+
+  private power(tree: Extract<Tree, { kind: 'power' }>): Expression {
+    const exponent = exponentOf(tree.exponent);
+    const base = this.expression(tree.base);
+    if (base.kind === 'constant') return this.constant(constantPower(Quotient.of(base.value), exponent, this.names, tree.span), tree);
+    if (exponent.sign < 0) this.refuseNegativePower(base, tree.base);
+    if (exponent.isInteger)
+      return this.withinPowers(exactly(tree.span, () => powerOf(base, Number(exponent.num))), tree);
+    if (!exponent.mul(rational(2)).isInteger)
+      return refuse(
+        `a field expression has no power ${exponent} here`,
+        'use whole numbers and square roots',
+        tree.exponent.span,
       );
+    const root = this.call('sqrt', base, tree);
+    return this.withinPowers(exactly(tree.span, () => powerOf(root, Number(exponent.num))), tree);
   }
-}
 
-type Call = Extract<Tree, { kind: 'call' }>;
-
-function onlyArgument(tree: Call): Tree {
-  const [argument] = tree.args;
-  if (tree.args.length !== 1 || !argument)
-    throw new NotationError(
-      `${tree.name} has one argument`,
-      `write ${tree.name}(…) with one`,
-      tree.span.start,
-    );
-  return argument;
-}
-
-/** Values that stay exact: functions at 0, log at 1. */
-function functionOfConstant(tree: Call, argument: Quotient): Coefficient {
-  if (argument.isZero && tree.name !== 'log')
-    return ['cos', 'exp', 'cosh'].includes(tree.name) ? Coefficient.one : Coefficient.zero;
-  if (tree.name === 'log' && argument.asCoefficient?.isOne) return Coefficient.zero;
-  throw new NotationError(
-    `${tree.name} of a constant has no exact value here`,
-    'declare a parameter for it',
-    tree.span.start,
-  );
-}
-
-function exponentOf(tree: Tree): Rational {
-  const value = rationalValue(tree);
-  if (!value)
-    throw new NotationError(
-      'an exponent must be a rational number',
-      'write e.g. 2, -1 or (1/2)',
-      tree.span.start,
-    );
-  if (value.abs().compare(rational(HIGHEST_POWER)) > 0)
-    throw new NotationError(
-      `the exponent ${value} is beyond ${HIGHEST_POWER}`,
-      'use a smaller one',
-      tree.span.start,
-    );
-  return value;
-}
-
-function readCoefficient(tree: Tree, names: Names): Coefficient {
-  const value = readQuotient(tree, names).asCoefficient;
-  if (!value)
-    throw new NotationError(
-      'this divides by a sum of parameters',
-      'declare a parameter for the quotient',
-      tree.span.start,
-    );
-  return value;
-}
-
-/** An operator-valued tree; a constant is a multiple of the identity. Throws NotationError. */
-export function readOperatorValue(tree: Tree, names: Names): LaurentPolynomial {
-  const dimension = names.axes.length;
-  const recurse = (t: Tree): LaurentPolynomial => readOperatorValue(t, names);
-  if (!holdsOperator(tree)) return LaurentPolynomial.constant(dimension, readCoefficient(tree, names));
-  switch (tree.kind) {
-    case 'operator': {
-      const axis = names.axes.indexOf(tree.axis);
-      if (axis < 0)
-        throw new NotationError(
-          `"${tree.axis}" is not an axis`,
-          `the axes are ${names.axes.join(', ')}`,
-          tree.span.start,
-        );
-      if (tree.name === 'd' && names.kind === 'lattice')
-        throw new NotationError(
-          `the derivative d_${tree.axis} stands in a lattice action`,
-          `write a difference, e.g. Delta_${tree.axis}`,
-          tree.span.start,
-        );
-      if (tree.name !== 'd' && names.kind === 'continuum')
-        throw new NotationError(
-          `the lattice operator ${tree.name}_${tree.axis} stands in a continuum Lagrangian`,
-          `write the derivative d_${tree.axis}`,
-          tree.span.start,
-        );
-      return elementaryOperator(tree.name, axis, dimension);
-    }
-    case 'sum':
-      return tree.terms.map(recurse).reduce((x, y) => x.add(y));
-    case 'negate':
-      return recurse(tree.operand).neg();
-    case 'product':
-      return tree.factors.map(recurse).reduce((x, y) => x.mul(y));
-    case 'quotient': {
-      const divisor = readCoefficient(tree.denominator, names);
-      if (divisor.isZero)
-        throw new NotationError(
-          'the denominator is zero',
-          'divide by something else',
-          tree.denominator.span.start,
-        );
-      return exactly(tree.span, () => recurse(tree.numerator).scale(Coefficient.one.div(divisor)));
-    }
-    case 'power': {
-      const exponent = exponentOf(tree.exponent);
-      if (!exponent.isInteger || (exponent.sign < 0 && names.kind === 'continuum'))
-        throw new NotationError(
-          `an operator has no power ${exponent}`,
-          'use a whole number',
-          tree.exponent.span.start,
-        );
-      return exactly(tree.span, () => recurse(tree.base).pow(Number(exponent.num)));
-    }
-    default:
-      throw new NotationError('this is not an operator', 'write operators and numbers only', tree.span.start);
+  private constant(value: Quotient, tree: Tree): Expression {
+    const coefficient = value.asCoefficient;
+    if (!coefficient)
+      return refuse('this divides by a sum of parameters', 'declare a parameter for the quotient', tree.span);
+    return constantOf(coefficient);
   }
-}
 
-function holdsOperator(tree: Tree): boolean {
-  switch (tree.kind) {
-    case 'operator':
-      return true;
-    case 'sum':
-      return tree.terms.some(holdsOperator);
-    case 'product':
-      return tree.factors.some(holdsOperator);
-    case 'negate':
-      return holdsOperator(tree.operand);
-    case 'quotient':
-      return holdsOperator(tree.numerator);
-    case 'power':
-      return holdsOperator(tree.base);
-    default:
-      return false;
+  private withinPowers(e: Expression, tree: Tree): Expression {
+    if (highestPower(e) <= HIGHEST_POWER) return e;
+    return refuse(`a power beyond ${HIGHEST_POWER}`, 'use a smaller exponent', tree.span);
   }
-}
 
-/** An expression in the fields. Throws NotationError. */
-export function readExpression(tree: Tree, names: Names): Expression {
-  const recurse = (t: Tree): Expression => readExpression(t, names);
-  if (!holdsField(tree, names)) return { kind: 'constant', value: readCoefficient(tree, names) };
-  switch (tree.kind) {
-    case 'symbol': {
-      const identity = LaurentPolynomial.constant(names.axes.length, Coefficient.one);
-      return { kind: 'linear', form: new Map([[tree.name, identity]]) };
-    }
-    case 'apply':
-      return applyOperator(tree, names);
-    case 'sum':
-      return sumOf(tree.terms.map(recurse));
-    case 'negate':
-      return productOf([minusOne, recurse(tree.operand)]);
-    case 'product':
-      return productOf(tree.factors.map(recurse));
-    case 'quotient': {
-      const denominator = recurse(tree.denominator);
-      if (denominator.kind !== 'constant')
-        return productOf([recurse(tree.numerator), { kind: 'power', base: denominator, exponent: -1 }]);
-      if (denominator.value.isZero)
-        throw new NotationError(
-          'the denominator is zero',
-          'divide by something else',
-          tree.denominator.span.start,
-        );
-      const inverse = exactly(tree.denominator.span, () => Coefficient.one.div(denominator.value));
-      return productOf([recurse(tree.numerator), { kind: 'constant', value: inverse }]);
-    }
-    case 'power':
-      return powerOf(tree, names);
-    case 'call': {
-      if (!(FUNCTION_NAMES as readonly string[]).includes(tree.name))
-        throw unknownFunction(tree.name, tree.span, names);
-      return { kind: 'function', name: tree.name as FunctionName, argument: recurse(onlyArgument(tree)) };
-    }
-    case 'number':
-    case 'operator':
-      throw new NotationError(
-        'an operator has nothing to act on',
-        'write the field after it',
-        tree.span.start,
+  private call(name: FunctionName, argument: Expression, tree: Tree): Expression {
+    if (argument.kind === 'constant')
+      return this.constant(functionOfConstant(name, Quotient.of(argument.value), this.names, tree.span), tree);
+    this.refuseExpansionPoint(name, argument, tree);
+    return { kind: 'function', name, argument };
+  }
+
+  private applied(tree: Extract<Tree, { kind: 'apply' }>): Expression {
+    const operand = this.expression(tree.operand);
+    const operator = this.operator(tree.operator);
+    if (operand.kind === 'constant')
+      return refuse(
+        'an operator acts on a constant',
+        'write constants before operators, e.g. 2 Delta_x phi, and let operators act on fields',
+        tree.operand.span,
       );
-  }
-}
-
-const minusOne: Expression = { kind: 'constant', value: Coefficient.integer(-1) };
-
-/** True when a field occurs, or an operator acts on something (which must then be a field). */
-function holdsField(tree: Tree, names: Names): boolean {
-  const recurse = (t: Tree): boolean => holdsField(t, names);
-  switch (tree.kind) {
-    case 'number':
-      return false;
-    case 'symbol':
-      return names.fields.includes(tree.name);
-    case 'operator':
-    case 'apply':
-      return true;
-    case 'call':
-      return tree.args.some(recurse);
-    case 'sum':
-      return tree.terms.some(recurse);
-    case 'product':
-      return tree.factors.some(recurse);
-    case 'negate':
-      return recurse(tree.operand);
-    case 'quotient':
-      return recurse(tree.numerator) || recurse(tree.denominator);
-    case 'power':
-      return recurse(tree.base);
-  }
-}
-
-function powerOf(tree: Extract<Tree, { kind: 'power' }>, names: Names): Expression {
-  const exponent = exponentOf(tree.exponent);
-  const base = readExpression(tree.base, names);
-  if (exponent.isInteger) return { kind: 'power', base, exponent: Number(exponent.num) };
-  if (exponent.mul(rational(2)).isInteger) {
-    const root: Expression = { kind: 'function', name: 'sqrt', argument: base };
-    const odd = Number(exponent.num);
-    return odd === 1 ? root : { kind: 'power', base: root, exponent: odd };
-  }
-  throw new NotationError(
-    `a field expression has no power ${exponent} here`,
-    'use whole numbers and square roots',
-    tree.exponent.span.start,
-  );
-}
-
-function applyOperator(tree: Extract<Tree, { kind: 'apply' }>, names: Names): Expression {
-  const operand = readExpression(tree.operand, names);
-  const operator = readOperatorValue(tree.operator, names);
-  if (operand.kind === 'constant')
-    throw new NotationError(
-      'an operator acts on a constant',
-      'let it act on a field, with parentheses if needed',
-      tree.operand.span.start,
-    );
-  if (operand.kind === 'linear')
-    return { kind: 'linear', form: mapForm(operand.form, (p) => p.mul(operator)) };
-  if (names.kind === 'continuum')
-    throw new NotationError(
-      'a derivative acts on a product or a function of fields',
-      'write it out by the product and chain rules',
-      tree.span.start,
-    );
-  // A shift moves every field inside: T (F(u)) = F(T u), so a stencil of an expression is a sum of moved copies.
-  return sumOf(
-    operator.terms.map(({ exponents, weight }) => {
+    if (operand.kind === 'linear') return exactly(tree.span, () => composed(operator, operand.form));
+    if (this.kind === 'continuum')
+      return refuse(
+        'a derivative acts on a product or a function of fields',
+        'write it out by the product and chain rules',
+        tree.span,
+      );
+    if (partCount(operand) * operator.terms.length > MOST_EXPRESSION_PARTS) return this.tooLarge(tree);
+    // A shift moves every field inside, T F(u) = F(T u), so a stencil of an expression is a sum of moved copies.
+    const copies = operator.terms.map(({ exponents, weight }) => {
       const shift = LaurentPolynomial.of(exponents.length, [{ exponents, weight: Coefficient.one }]);
-      return productOf([{ kind: 'constant', value: weight }, mapLinear(operand, (p) => p.mul(shift))]);
-    }),
-  );
+      return productOf([constantOf(weight), shifted(operand, shift)]);
+    });
+    return exactly(tree.span, () => sumOf(copies));
+  }
+
+  /** An operator-valued tree; a constant is a multiple of the identity. */
+  private operator(tree: Tree): LaurentPolynomial {
+    const recurse = (t: Tree): LaurentPolynomial => this.operator(t);
+    if (!isOperatorValued(tree))
+      return LaurentPolynomial.constant(this.names.axes.length, readCoefficient(tree, this.names));
+    switch (tree.kind) {
+      case 'operator':
+        return this.elementary(tree);
+      case 'sum':
+        return tree.terms.map(recurse).reduce((x, y) => x.add(y));
+      case 'negate':
+        return recurse(tree.operand).neg();
+      case 'product':
+        return this.withinReach(
+          exactly(tree.span, () => tree.factors.map(recurse).reduce(boundedOperatorProduct)),
+          tree,
+        );
+      case 'quotient': {
+        const divisor = readCoefficient(tree.denominator, this.names);
+        if (divisor.isZero)
+          return refuse('the denominator is zero', 'divide by something else', tree.denominator.span);
+        const numerator = recurse(tree.numerator);
+        return exactly(tree.span, () => numerator.scale(Coefficient.one.div(divisor)));
+      }
+      case 'power':
+        return this.operatorPower(recurse(tree.base), exponentOf(tree.exponent), tree);
+      default:
+        return refuse('this is not an operator', 'write operators and numbers only', tree.span);
+    }
+  }
+
+  private operatorPower(base: LaurentPolynomial, exponent: Rational, tree: Tree): LaurentPolynomial {
+    if (!exponent.isInteger || (exponent.sign < 0 && (this.kind === 'continuum' || base.terms.length !== 1)))
+      return refuse(
+        `an operator has no power ${exponent} here`,
+        'use a natural number; a shift alone has negative powers, e.g. T_x^-1',
+        tree.span,
+      );
+    if (exponent.abs().num > BigInt(HIGHEST_POWER))
+      return refuse(`a power beyond ${HIGHEST_POWER}`, 'use a smaller exponent', tree.span);
+    const one = LaurentPolynomial.constant(base.dimension, Coefficient.one);
+    const positive = exactly(tree.span, () =>
+      boundedPower(one, exponent.sign < 0 ? base.pow(-1) : base, exponent.abs().num, boundedOperatorProduct),
+    );
+    return this.withinReach(positive, tree);
+  }
+
+  private withinReach(p: LaurentPolynomial, tree: Tree): LaurentPolynomial {
+    if (p.terms.every((t) => t.exponents.every((n) => Math.abs(n) <= LONGEST_REACH))) return p;
+    return refuse(`an operator that reaches beyond ${LONGEST_REACH}`, 'use a shorter one', tree.span);
+  }
+
+  private elementary(tree: Extract<Tree, { kind: 'operator' }>): LaurentPolynomial {
+    const { axes } = this.names;
+    const axis = axes.indexOf(tree.axis);
+    if (axis < 0)
+      return refuse(`"${tree.axis}" is not an axis`, `the axes are ${axes.join(', ')}`, tree.span);
+    if (tree.name === 'd' && this.kind === 'lattice')
+      return refuse(
+        `the derivative d_${tree.axis} stands in a lattice action`,
+        `write a difference, e.g. Delta_${tree.axis} (forward), Deltab_${tree.axis} (backward) or Deltac_${tree.axis} (central)`,
+        tree.span,
+      );
+    if (tree.name !== 'd' && this.kind === 'continuum')
+      return refuse(
+        `the lattice operator ${tree.name}_${tree.axis} stands in a continuum Lagrangian`,
+        `write the derivative d_${tree.axis}`,
+        tree.span,
+      );
+    return elementaryOperator(tree.name, axis, axes.length);
+  }
+
+  /** Value of a linear form where every field has its background value. */
+  private formValue(form: LinearForm): Coefficient {
+    return [...form].reduce((sum, [name, p]) => {
+      const background = this.names.background.get(name);
+      if (!background) return sum;
+      const counted = this.kind === 'lattice' ? p.terms : p.terms.filter((t) => t.exponents.every((n) => n === 0));
+      return counted.reduce((s, t) => s.add(t.weight.scale(background)), sum);
+    }, Coefficient.zero);
+  }
+
+  private onBackground(e: Expression): Coefficient | undefined {
+    return valueOnConstants(e, (form) => this.formValue(form), valueAtConstant);
+  }
+
+  /** A negative power is a series about the background, where the base must be a product of numbers and parameters. */
+  private refuseNegativePower(base: Expression, tree: Tree): void {
+    const point = this.onBackground(base);
+    if (!point || point.asMonomial) return;
+    refuse(
+      point.isZero
+        ? 'this is divided by, and it vanishes on the constant background'
+        : 'this is divided by, and its constant part is a sum',
+      'write c (1 + u) with a product c of numbers and parameters, or declare a parameter for the constant',
+      tree.span,
+    );
+  }
+
+  /** Refuses functions whose Taylor series about the background leaves the exact numbers. */
+  private refuseExpansionPoint(name: FunctionName, argument: Expression, tree: Tree): void {
+    const point = this.onBackground(argument);
+    if (!point || this.isExpansionPoint(name, point)) return;
+    refuse(
+      `${name} cannot be expanded exactly about the value that its argument has on the constant background`,
+      EXPANSION_MENDS[name],
+      tree.span,
+    );
+  }
+
+  /** True where the Taylor coefficients of the function are exact: at 0, at multiples of π/6 and π/4 for cos and sin, at 1
+   *  for log, at a positive product of numbers and parameters for sqrt. */
+  private isExpansionPoint(name: FunctionName, point: Coefficient): boolean {
+    switch (name) {
+      case 'cos':
+      case 'sin': {
+        const twelfths = point.div(Coefficient.symbol('pi')).asRational?.mul(rational(12));
+        return twelfths?.isInteger === true && (twelfths.num % 2n === 0n || twelfths.num % 3n === 0n);
+      }
+      case 'log':
+        return point.isOne;
+      case 'sqrt': {
+        const { positive } = this.names;
+        const isPositive = (g: string): boolean => g === 'pi' || g.startsWith('#') || positive.has(g);
+        const term = point.asMonomial;
+        return term !== undefined && term.factor.sign > 0 && term.powers.every(([g]) => isPositive(g));
+      }
+      default:
+        return point.isZero;
+    }
+  }
 }
 
-function mapForm(form: LinearForm, map: (p: LaurentPolynomial) => LaurentPolynomial): LinearForm {
-  const out = new Map<string, LaurentPolynomial>();
-  for (const [name, p] of form) {
-    const image = map(p);
-    if (!image.isZero) out.set(name, image);
-  }
-  return out;
-}
+const minusOne = constantOf(Coefficient.integer(-1));
 
-function mapLinear(e: Expression, map: (p: LaurentPolynomial) => LaurentPolynomial): Expression {
-  const recurse = (x: Expression): Expression => mapLinear(x, map);
-  switch (e.kind) {
-    case 'constant':
-      return e;
-    case 'linear':
-      return { kind: 'linear', form: mapForm(e.form, map) };
-    case 'sum':
-      return { kind: 'sum', terms: e.terms.map(recurse) };
-    case 'product':
-      return { kind: 'product', factors: e.factors.map(recurse) };
-    case 'power':
-      return { ...e, base: recurse(e.base) };
-    case 'function':
-      return { ...e, argument: recurse(e.argument) };
-  }
-}
-
-/** Sum with linear forms merged and constants added up. */
-export function sumOf(terms: readonly Expression[]): Expression {
-  let constant = Coefficient.zero;
-  const linear = new Map<string, LaurentPolynomial>();
-  const others: Expression[] = [];
-  for (const t of terms.flatMap((x) => (x.kind === 'sum' ? x.terms : [x]))) {
-    if (t.kind === 'constant') constant = constant.add(t.value);
-    else if (t.kind === 'linear')
-      for (const [name, p] of t.form) linear.set(name, linear.get(name)?.add(p) ?? p);
-    else others.push(t);
-  }
-  for (const [name, p] of linear) if (p.isZero) linear.delete(name);
-  const out: Expression[] = constant.isZero
-    ? [...others]
-    : [{ kind: 'constant', value: constant }, ...others];
-  if (linear.size > 0) out.push({ kind: 'linear', form: linear });
-  if (out.length === 0) return { kind: 'constant', value: Coefficient.zero };
-  return out.length === 1 ? out[0]! : { kind: 'sum', terms: out };
-}
-
-/** Product with constants multiplied into one, and into a linear form that stands alone. */
-export function productOf(factors: readonly Expression[]): Expression {
-  let constant = Coefficient.one;
-  const others: Expression[] = [];
-  for (const f of factors.flatMap((x) => (x.kind === 'product' ? x.factors : [x]))) {
-    if (f.kind === 'constant') constant = constant.mul(f.value);
-    else others.push(f);
-  }
-  const [only] = others;
-  if (only === undefined || constant.isZero)
-    return { kind: 'constant', value: only ? Coefficient.zero : constant };
-  if (others.length === 1 && only.kind === 'linear')
-    return { kind: 'linear', form: mapForm(only.form, (p) => p.scale(constant)) };
-  const all: Expression[] = constant.isOne ? others : [{ kind: 'constant', value: constant }, ...others];
-  return all.length === 1 ? all[0]! : { kind: 'product', factors: all };
-}
+const EXPANSION_MENDS: Readonly<Record<FunctionName, string>> = {
+  cos: 'take a multiple of pi/6 or pi/4, or put a parameter before the function by the addition theorem',
+  sin: 'take a multiple of pi/6 or pi/4, or put a parameter before the function by the addition theorem',
+  tan: 'let the argument vanish there',
+  exp: 'take the constant out as a parameter, exp(c + u) = C exp(u)',
+  cosh: 'let the argument vanish there',
+  sinh: 'let the argument vanish there',
+  log: 'write log(c (1 + u)) as log(1 + u) and leave the constant out',
+  sqrt: 'write c (1 + u) with a product c of positive numbers and parameters under the root',
+};

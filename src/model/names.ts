@@ -1,5 +1,6 @@
 // The names that a case declares, and helpful words about names that it does not.
 
+import type { Rational } from '../exact/rational.ts';
 import { NotationError } from '../notation/source.ts';
 import { tokens } from '../notation/tokens.ts';
 import { FUNCTION_NAMES, type Span } from '../notation/tree.ts';
@@ -17,6 +18,8 @@ export interface Names {
   readonly elsewhere: ReadonlyMap<string, { readonly problem: string; readonly mend: string }>;
   /** The key under which a missing parameter would be declared, e.g. `proposal: parameters`. */
   readonly declareUnder: string;
+  /** Constant background about which functions will be expanded, by field name; absent means 0. */
+  readonly background: ReadonlyMap<string, Rational>;
 }
 
 /** Names with a meaning of their own in the notation. */

@@ -1,27 +1,33 @@
 // A YAML text with positions: every value can say where it stands, and every character of a string value where it stands in
-// the file. Refuses what a case or a rule has no use for: anchors, tags, several documents, keys that are no strings.
+// the file. Refuses what a case or a rule has no use for: anchors, tags, directives, several documents, keys that are no
+// strings.
 
 import {
+  Composer,
+  type CST,
   type Document,
   isAlias,
   isMap,
-  isPair,
   isScalar,
-  isSeq,
   LineCounter,
   type Node,
-  type Pair,
-  parseAllDocuments,
+  Parser,
   type Scalar,
   visit,
+  type YAMLMap,
 } from 'yaml';
+import { shortened } from '../notation/part.ts';
 import { InputError, type SourcePosition } from '../notation/source.ts';
-import { DEEPEST_YAML, LARGEST_FILE } from './limits.ts';
+import { decodeText } from './inputText.ts';
+import { DEEPEST_YAML } from './limits.ts';
+import { sourceOffset } from './scalarOffset.ts';
 
 export type Path = readonly (string | number)[];
 
 /** A parsed file whose values know their positions. */
 export class YamlSource {
+  private plain: unknown;
+
   private constructor(
     readonly file: string,
     readonly text: string,
@@ -31,34 +37,22 @@ export class YamlSource {
 
   /** Reads a text or bytes. Throws InputError for anything that is not one plain YAML document. */
   static read(input: string | Uint8Array, file: string): YamlSource {
-    const text = decode(input, file);
+    const text = decodeText(input, file);
     const lines = new LineCounter();
-    refuseDeepNesting(text, file);
-    const parsed = parseAllDocuments(text, {
-      lineCounter: lines,
+    const at = (offset: number): SourcePosition => positionAt(lines, file, offset);
+    const tokens = [...new Parser(lines.addNewLine).parse(text)];
+    refuseTokens(tokens, at);
+    const composer = new Composer({
       version: '1.2',
-      uniqueKeys: true,
-      prettyErrors: false,
-      strict: true,
+      schema: 'core',
       merge: false,
-      intAsBigInt: false,
+      strict: true,
+      uniqueKeys: false,
+      prettyErrors: false,
     });
-    const at = (offset: number): SourcePosition => {
-      const { line, col } = lines.linePos(offset);
-      return { file, line: Math.max(1, line), column: Math.max(1, col) };
-    };
-    if (!Array.isArray(parsed) || parsed.length === 0)
-      throw new InputError('the file is empty', 'saltus new NAME prints a case to start from', at(0));
-    const [document, second] = parsed as Document.Parsed[];
+    const [document] = [...composer.compose(tokens, true, text.length)];
     const [problem] = [...document!.errors, ...document!.warnings];
-    if (problem)
-      throw new InputError(yamlProblem(problem.message), yamlMend(problem.code), at(problem.pos[0]));
-    if (second)
-      throw new InputError(
-        'the file holds more than one YAML document',
-        'put one case in one file',
-        at(second.range[0]),
-      );
+    if (problem) throw new InputError(...yamlProblem(problem.code, problem.message), at(problem.pos[0]));
     const source = new YamlSource(file, text, document!, lines);
     source.refuseUnwanted();
     return source;
@@ -66,17 +60,17 @@ export class YamlSource {
 
   /** The whole document as plain values. */
   toPlain(): unknown {
-    return this.document.toJS({ maxAliasCount: 0 });
+    this.plain ??= this.document.toJS({ maxAliasCount: 0 });
+    return this.plain;
   }
 
   position(offset: number): SourcePosition {
-    const { line, col } = this.lines.linePos(offset);
-    return { file: this.file, line: Math.max(1, line), column: Math.max(1, col) };
+    return positionAt(this.lines, this.file, offset);
   }
 
   /** Where the value of a path stands, or the closest enclosing one that exists. */
   positionOf(path: Path): SourcePosition {
-    const node = this.node(path);
+    const node = this.closestNode(path);
     return this.position(node?.range?.[0] ?? 0);
   }
 
@@ -85,7 +79,7 @@ export class YamlSource {
     const parent = this.document.getIn(path.slice(0, -1), true);
     const key = path.at(-1);
     if (isMap(parent)) {
-      const pair = parent.items.find((p) => isScalar(p.key) && String(p.key.value) === String(key));
+      const pair = parent.items.find((p) => isScalar(p.key) && p.key.value === key);
       if (pair && isScalar(pair.key)) return this.position(pair.key.range?.[0] ?? 0);
     }
     return this.positionOf(path);
@@ -93,24 +87,35 @@ export class YamlSource {
 
   /** Where a character of the string at a path stands: quotes, escapes, folding and indentation are followed. */
   positionInString(path: Path, offset: number): SourcePosition {
-    const node = this.node(path);
-    if (!isScalar(node) || !node.range || typeof node.value !== 'string') return this.positionOf(path);
-    return this.position(sourceOffset(this.text, node as Scalar<string>, offset));
+    const node = this.scalar(path);
+    return node ? this.position(sourceOffset(this.text, node, offset)) : this.positionOf(path);
   }
 
-  /** True when the string at a path is written without quotes and not as a block. */
-  isPlain(path: Path): boolean {
-    const node = this.node(path);
-    return isScalar(node) && node.type === 'PLAIN';
+  /** How the scalar at a path is written, or undefined when there is none. */
+  styleOf(path: Path): Scalar.Type | undefined {
+    return (this.scalar(path)?.type as Scalar.Type | null | undefined) ?? undefined;
+  }
+
+  /** The scalar at a path as it is written in the file, without quotes for a plain one. */
+  writtenAt(path: Path): string {
+    const range = this.scalar(path)?.range;
+    return range ? this.text.slice(range[0], range[1]) : '';
   }
 
   /** The rest of the line behind the string at a path: what YAML took for a comment. */
   commentBehind(path: Path): string {
-    const node = this.node(path);
-    return isScalar(node) ? (node.comment ?? '') : '';
+    const range = this.scalar(path)?.range;
+    if (!range) return '';
+    const [rest] = /^[^\n]*/.exec(this.text.slice(range[1]))!;
+    return /^[ \t]+#/.test(rest) ? rest.trim() : '';
   }
 
-  private node(path: Path): Node | undefined {
+  private scalar(path: Path): Scalar | undefined {
+    const node = path.length === 0 ? this.document.contents : this.document.getIn(path, true);
+    return isScalar(node) ? node : undefined;
+  }
+
+  private closestNode(path: Path): Node | undefined {
     for (let length = path.length; length >= 0; length--) {
       const found = length === 0 ? this.document.contents : this.document.getIn(path.slice(0, length), true);
       if (found && typeof found === 'object' && 'range' in found) return found as Node;
@@ -118,152 +123,102 @@ export class YamlSource {
     return undefined;
   }
 
+  private refuse(problem: string, mend: string, node: unknown): never {
+    const range = (node as Node | null)?.range;
+    throw new InputError(problem, mend, this.position(range?.[0] ?? 0));
+  }
+
   private refuseUnwanted(): void {
-    const refuse = (
-      problem: string,
-      mend: string,
-      node: { range?: readonly number[] | null | undefined },
-    ): never => {
-      throw new InputError(problem, mend, this.position(node.range?.[0] ?? 0));
-    };
+    const quotes = 'write the value out, or put the string in quotes';
     visit(this.document, {
       Node: (_, node) => {
-        if (isAlias(node)) refuse('aliases are not read', 'write the value out', node);
-        else if (node.anchor)
-          refuse('anchors are not read', 'write the value out, or put the string in quotes', node);
-        else if (node.tag && (isScalar(node) || isMap(node) || isSeq(node)) && this.hasWrittenTag(node))
-          refuse('tags are not read', 'leave the tag out', node);
-      },
-      Pair: (_, pair) => {
-        const { key } = pair as Pair;
-        if (isPair(key) || !isScalar(key) || typeof key.value !== 'string')
-          refuse('a key must be a name', 'write it as a plain word', (key as Node | null) ?? {});
+        if (isAlias(node)) this.refuse('aliases are not read', quotes, node);
+        if (node.anchor) this.refuse('anchors are not read', quotes, node);
+        if (node.tag) this.refuse('tags are not read', 'leave the tag out, or put the string in quotes', node);
+        if (isMap(node)) this.refuseKeys(node);
       },
     });
   }
 
-  private hasWrittenTag(node: Node): boolean {
-    const start = node.range?.[0] ?? 0;
-    return (
-      /(^|[\s[{,:-])![^\s]*\s*$/.test(this.text.slice(Math.max(0, start - 200), start)) ||
-      this.text[start] === '!'
-    );
-  }
-}
-
-function decode(input: string | Uint8Array, file: string): string {
-  const start = { file, line: 1, column: 1 };
-  const size = typeof input === 'string' ? Buffer.byteLength(input) : input.byteLength;
-  if (size > LARGEST_FILE)
-    throw new InputError(
-      `the file has ${size} bytes, more than the ${LARGEST_FILE} that are read`,
-      'split it into several cases',
-      start,
-    );
-  let text: string;
-  try {
-    text = typeof input === 'string' ? input : new TextDecoder('utf-8', { fatal: true }).decode(input);
-  } catch {
-    throw new InputError('the file is not UTF-8 text', 'save it as plain UTF-8 text', start);
-  }
-  // biome-ignore lint/suspicious/noControlCharactersInRegex: control characters are what is looked for
-  const control = /[\u0000-\u0008\u000b\u000c\u000e-\u001f\u007f]/.exec(text);
-  if (control) {
-    const before = text.slice(0, control.index).split('\n');
-    const code = control[0].charCodeAt(0).toString(16).padStart(4, '0');
-    throw new InputError(
-      `the file holds the control character U+${code}`,
-      'a case is plain text; remove it',
-      {
-        file,
-        line: before.length,
-        column: before.at(-1)!.length + 1,
-      },
-    );
-  }
-  return text;
-}
-
-/** Counts brackets and indentation before parsing, so that absurd nesting never reaches the recursive parser. */
-function refuseDeepNesting(text: string, file: string): void {
-  let depth = 0;
-  let line = 1;
-  let lineStart = 0;
-  for (let i = 0; i < text.length; i++) {
-    const c = text[i];
-    if (c === '\n') {
-      line++;
-      lineStart = i + 1;
-    } else if (c === '[' || c === '{') depth++;
-    else if ((c === ']' || c === '}') && depth > 0) depth--;
-    else if (c === '"' || c === "'") {
-      // Brackets inside a quoted string on one line do not nest.
-      const end = text.indexOf(c, i + 1);
-      const newline = text.indexOf('\n', i + 1);
-      if (end > 0 && (newline < 0 || end < newline)) i = end;
+  private refuseKeys(map: YAMLMap): void {
+    const seen = new Set<string>();
+    for (const { key } of map.items) {
+      if (!isScalar(key) || typeof key.value !== 'string')
+        return this.refuse('a key must be a word', 'write it as a plain word, or in quotes', key ?? map);
+      if (key.value === '__proto__' || key.value === '<<')
+        this.refuse(`"${key.value}" is not a key here`, 'leave it out', key);
+      if (seen.has(key.value))
+        this.refuse(`the key "${shortened(key.value)}" stands twice in one map`, 'keep one of the two', key);
+      seen.add(key.value);
     }
-    const dashes =
-      c === '-' && i === lineStart ? /^(?:- ?)+/.exec(text.slice(i, i + 4 * DEEPEST_YAML)) : null;
-    const run = dashes ? dashes[0].split('-').length - 1 : 0;
-    if (depth > DEEPEST_YAML || run > DEEPEST_YAML)
+  }
+}
+
+function positionAt(lines: LineCounter, file: string, offset: number): SourcePosition {
+  const { line, col } = lines.linePos(offset);
+  return { file, line: Math.max(1, line), column: Math.max(1, col) };
+}
+
+/** Refuses directives, a second document, an empty file and deep nesting before the recursive composer sees them. */
+function refuseTokens(tokens: readonly CST.Token[], at: (offset: number) => SourcePosition): void {
+  const directive = tokens.find((t) => t.type === 'directive');
+  if (directive)
+    throw new InputError(
+      'directives are not read',
+      'remove the line; case files are YAML 1.2',
+      at(directive.offset),
+    );
+  const documents = tokens.filter((t) => t.type === 'document');
+  const [first, second] = documents;
+  if (second)
+    throw new InputError(
+      'the file holds more than one YAML document',
+      'put one case in one file',
+      at(second.offset),
+    );
+  const problem = tokens.find((t) => t.type === 'error');
+  if (problem) throw new InputError('this is no YAML', DEFAULT_MEND, at(problem.offset));
+  if (!first?.value)
+    throw new InputError('the file is empty', 'saltus new NAME prints a case to start from', at(0));
+  refuseDeepNesting(first.value, at);
+}
+
+/** Walks the tokens without recursion. */
+function refuseDeepNesting(root: CST.Token, at: (offset: number) => SourcePosition): void {
+  const waiting: { token: CST.Token; depth: number }[] = [{ token: root, depth: 1 }];
+  for (let next = waiting.pop(); next; next = waiting.pop()) {
+    const { token, depth } = next;
+    if (!('items' in token)) continue;
+    if (depth > DEEPEST_YAML)
       throw new InputError(
         `the file is nested deeper than ${DEEPEST_YAML} levels`,
-        'a case needs no more than six',
-        {
-          file,
-          line,
-          column: i - lineStart + 1,
-        },
+        'remove levels; a case needs six',
+        at(token.offset),
       );
-  }
-}
-
-const yamlProblem = (message: string): string => message.split('\n')[0]!.replace(/\.$/, '').replace(/:$/, '');
-
-function yamlMend(code: string): string {
-  switch (code) {
-    case 'DUPLICATE_KEY':
-      return 'keep one of the two';
-    case 'TAB_AS_INDENT':
-      return 'indent with spaces';
-    case 'MISSING_CHAR':
-      return 'close the quote or bracket';
-    case 'BAD_INDENT':
-      return 'align it with its siblings';
-    case 'MULTILINE_IMPLICIT_KEY':
-    case 'BLOCK_AS_IMPLICIT_KEY':
-      return 'put strings with ":" in quotes';
-    default:
-      return 'correct the YAML; strings with special characters belong in quotes';
-  }
-}
-
-/** Offset in the source text of a character of a scalar's value. */
-function sourceOffset(text: string, node: Scalar<string>, offset: number): number {
-  const { value } = node;
-  let j = node.range![0];
-  const end = node.range![1];
-  const isDouble = node.type === 'QUOTE_DOUBLE';
-  const isSingle = node.type === 'QUOTE_SINGLE';
-  if (isDouble || isSingle) j++;
-  else if (node.type?.startsWith('BLOCK')) j = text.indexOf('\n', j) + 1;
-  const isSpace = (c: string | undefined): boolean => c === ' ' || c === '\n' || c === '\t' || c === '\r';
-  for (let i = 0; i < Math.min(offset, value.length); i++) {
-    if (isSpace(value[i])) {
-      if (isSpace(text[j])) j++;
-      // Folded white space: one blank in the value may be a line break and its indentation in the file.
-      if (i + 1 < value.length && !isSpace(value[i + 1])) while (isSpace(text[j]) && j < end) j++;
-      continue;
+    for (const { key, value } of token.items) {
+      if (key) waiting.push({ token: key, depth: depth + 1 });
+      if (value) waiting.push({ token: value, depth: depth + 1 });
     }
-    while (isSpace(text[j]) && j < end) j++;
-    if (isDouble && text[j] === '\\') j += escapeLength(text, j);
-    else j += isSingle && text.startsWith("''", j) ? 2 : 1;
   }
-  if (!isSpace(value[offset])) while (isSpace(text[j]) && j < end) j++;
-  return Math.min(j, Math.max(node.range![0], end - 1));
 }
 
-function escapeLength(text: string, at: number): number {
-  const lengths: Record<string, number> = { x: 4, u: 6, U: 10 };
-  return lengths[text[at + 1] ?? ''] ?? 2;
+const DEFAULT_MEND = 'correct the YAML; strings with special characters belong in quotes';
+
+const PROBLEMS: Readonly<Record<string, readonly [problem: string, mend: string]>> = {
+  TAB_AS_INDENT: ['a tab indents this line', 'indent with spaces'],
+  BAD_INDENT: ['the indentation does not fit', 'align the line with its siblings'],
+  MISSING_CHAR: ['a quote, a comma or a bracket is missing', 'close or add it'],
+  BAD_DQ_ESCAPE: [
+    'a backslash in double quotes starts an escape that YAML does not know',
+    'put the string in single quotes',
+  ],
+  MULTILINE_IMPLICIT_KEY: ['a key runs over several lines', 'put strings with ":" in quotes'],
+  BLOCK_AS_IMPLICIT_KEY: ['a second ": " stands on one line', 'put strings with ": " in quotes'],
+  BAD_ALIAS: ['this reads as an alias', 'put strings with * in quotes'],
+  TAG_RESOLVE_FAILED: ['tags are not read', 'leave the tag out, or put the string in quotes'],
+};
+
+function yamlProblem(code: string, message: string): readonly [problem: string, mend: string] {
+  const first = message.split('\n')[0]!.replace(/[.:]$/, '');
+  return PROBLEMS[code] ?? [`this is no YAML: ${first}`, DEFAULT_MEND];
 }

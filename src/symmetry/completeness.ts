@@ -9,7 +9,8 @@ import type { DiscreteSearch } from './discreteShifts.ts';
 import type { CompletenessCertificate } from './family.ts';
 import { Box, conditionsOn, edgeLengths, type ResidueForm, residueForms } from './openBox.ts';
 import { exponentsUpTo } from './polynomialSolutions.ts';
-import type { FoundFamily, SearchResult } from './shiftSearch.ts';
+import type { FoundFamily } from './restriction.ts';
+import type { SearchResult } from './shiftSearch.ts';
 
 /** Dimension of the solutions on the box, restricted to its inner part. */
 function solutionsOn(box: Box, forms: readonly ResidueForm[], fields: number, field: PrimeField): number {

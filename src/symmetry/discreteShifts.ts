@@ -10,7 +10,7 @@ import type { ShiftSystem } from './constantSystem.ts';
 import { type FreeDirections, gcdOf } from './functionals.ts';
 import { Box, conditionsOn, edgeLengths } from './openBox.ts';
 import { groups } from './polynomialSolutions.ts';
-import type { FoundFamily } from './shiftSearch.ts';
+import type { FoundFamily } from './restriction.ts';
 
 const SMALL_PRIMES = [2, 3, 5, 7, 11, 13];
 

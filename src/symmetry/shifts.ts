@@ -15,8 +15,9 @@ import { discreteShifts } from './discreteShifts.ts';
 import type { ShiftAnalysis, ShiftFamily, ShiftSymmetry } from './family.ts';
 import { freeDirections } from './functionals.ts';
 import { polynomialSolutions } from './polynomialSolutions.ts';
+import type { FoundFamily } from './restriction.ts';
 import { profileText } from './shiftProfile.ts';
-import { directionsOf, type FoundFamily, functionalsOf, searchShifts } from './shiftSearch.ts';
+import { directionsOf, functionalsOf, searchShifts } from './shiftSearch.ts';
 import { testShiftFamily } from './shiftTest.ts';
 
 export type { CorrectionMonomial } from './brokenShift.ts';

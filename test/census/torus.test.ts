@@ -10,7 +10,7 @@ const entry = (...rows: [number[], number, number[]?][]): Published =>
 
 const cases: [string, number, (o: Operators) => LaurentPolynomial[], Published][] = [
   [
-    // reference entry plaq2d-ZN. N. Seiberg, S.-H. Shao, SciPost Phys. 10 (2021) 027; P. Gorantla, H.T. Lam, N. Seiberg,
+    // published entry plaq2d-ZN. N. Seiberg, S.-H. Shao, SciPost Phys. 10 (2021) 027; P. Gorantla, H.T. Lam, N. Seiberg,
     // S.-H. Shao, J. Math. Phys. 62 (2021) 102301 (equation numbers not checked)
     'the plaquette in two dimensions: Lx + Ly - 1',
     2,
@@ -30,7 +30,7 @@ const cases: [string, number, (o: Operators) => LaurentPolynomial[], Published][
     ),
   ],
   [
-    // reference entry faces3d-ZN. N. Seiberg, S.-H. Shao, SciPost Phys. 9 (2020) 046; SciPost Phys. 10 (2021) 003
+    // published entry faces3d-ZN. N. Seiberg, S.-H. Shao, SciPost Phys. 9 (2020) 046; SciPost Phys. 10 (2021) 003
     // (equation numbers not checked)
     'the three faces in three dimensions: Lx + Ly + Lz - 2',
     3,
@@ -46,7 +46,7 @@ const cases: [string, number, (o: Operators) => LaurentPolynomial[], Published][
     ),
   ],
   [
-    // reference entry cube3d-ZN, same sources
+    // published entry cube3d-ZN, same sources
     'the cube in three dimensions',
     3,
     (o) => [o.delta(1).mul(o.delta(2)).mul(o.delta(3))],
@@ -61,7 +61,7 @@ const cases: [string, number, (o: Operators) => LaurentPolynomial[], Published][
     ),
   ],
   [
-    // reference entry dipole2d-ZN. P. Gorantla, H.T. Lam, N. Seiberg, S.-H. Shao, arXiv:2209.10030 (number not checked);
+    // published entry dipole2d-ZN. P. Gorantla, H.T. Lam, N. Seiberg, S.-H. Shao, arXiv:2209.10030 (number not checked);
     // closed form derived and checked there
     'all second differences in two dimensions: U(1) x Z_Lx x Z_Ly',
     2,

@@ -140,6 +140,43 @@ describe('shift symmetries on the lattice and in the continuum', () => {
     expect(a.lattice.complete && a.continuum?.complete).toBe(true);
   });
 
+  it('may be staggered although a larger family runs through the same points', () => {
+    const a = analyse(
+      plane,
+      (o) => [o.T(1, 2).sub(o.one), o.delta(0).mul(o.delta(1))],
+      (o) => [o.T(1), o.T(0).mul(o.T(1))],
+      'real',
+    );
+    expect(statuses(a)).toEqual({ 'f(x)': 'survives', '(-1)^y': 'lattice-only' });
+    expect(a.lattice.complete).toBe(true);
+  });
+
+  it('may be waves of three, four or six steps', () => {
+    const a = analyse(latticeOf('x'), (o) => [o.one.add(o.T(0)).add(o.T(0, 2))], null, 'real');
+    expect(a.symmetries.map((s) => s.family.profile)).toEqual(['cos(2*pi*x/3)']);
+    const b = analyse(latticeOf('x'), (o) => [o.one.add(o.T(0, 2))], null, 'real');
+    expect(b.symmetries.map((s) => s.family.profile)).toEqual(['cos(pi*x/2)']);
+    const c = analyse(latticeOf('x'), (o) => [o.one.sub(o.T(0)).add(o.T(0, 2)).pow(2)], null, 'real');
+    expect(c.symmetries.map((s) => s.family.profile)).toEqual(['cos(pi*x/3)', 'x cos(pi*x/3)']);
+    expect([a, b, c].every((x) => x.lattice.complete)).toBe(true);
+  });
+
+  it('compare functions of x - y on a lattice with two spacings in lattice steps', () => {
+    const lattice: Lattice = {
+      axes: [
+        { name: 'x', spacing: 'a', role: 'space' },
+        { name: 'y', spacing: 'c', role: 'space' },
+      ],
+      limits: ['a', 'c'],
+    };
+    const diagonal: Build = (o) => [o.T(0).mul(o.T(1)).sub(o.one)];
+    const [a, c] = [Coefficient.symbol('a'), Coefficient.symbol('c')];
+    const scaled = analyse(lattice, diagonal, (o) => [o.T(0).scale(a).add(o.T(1).scale(c))]);
+    expect(statuses(scaled)['f(x-y)']).toBe('survives');
+    const plain = analyse(lattice, diagonal, (o) => [o.T(0).add(o.T(1))]);
+    expect(statuses(plain)['f(x-y)']).toBe('lattice-only');
+  });
+
   it('may be functions of a combination read off the stencil', () => {
     const a = analyse(plane, (o) => [o.T(0, 2).mul(o.T(1, -1)).sub(o.one)], null);
     expect(a.symmetries.map((s) => s.family.profile)).toEqual(['f(x+2*y)']);

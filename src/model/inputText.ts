@@ -1,0 +1,67 @@
+// Bytes to text: size, encoding and control characters, before any parser sees the input.
+
+import { InputError, type SourcePosition } from '../notation/source.ts';
+import { LARGEST_FILE } from './limits.ts';
+
+/** The text of a file. Throws InputError for a file that is too large, no UTF-8, or holds control characters. */
+export function decodeText(input: string | Uint8Array, file: string): string {
+  const size = typeof input === 'string' ? Buffer.byteLength(input) : input.byteLength;
+  if (size > LARGEST_FILE)
+    throw new InputError(
+      `the file has ${size} bytes, more than the ${LARGEST_FILE} that are read`,
+      'leave out what is not part of the case, or split it into several cases',
+      { file, line: 1, column: 1 },
+    );
+  const text = (typeof input === 'string' ? input : decodeBytes(input, file)).replace(/^\ufeff/, '');
+  refuseControlCharacters(text, file);
+  return text;
+}
+
+function decodeBytes(bytes: Uint8Array, file: string): string {
+  if ((bytes[0] === 0xff && bytes[1] === 0xfe) || (bytes[0] === 0xfe && bytes[1] === 0xff))
+    throw new InputError('the file is UTF-16 text', 'save it as UTF-8', { file, line: 1, column: 1 });
+  const valid = decodedStart(bytes, bytes.length);
+  if (valid !== undefined) return valid;
+  // The longest start that is UTF-8, perhaps with an unfinished character at its end.
+  let [good, bad] = [0, bytes.length];
+  while (bad - good > 1) {
+    const middle = (good + bad) >> 1;
+    if (decodedStart(bytes, middle, true) === undefined) bad = middle;
+    else good = middle;
+  }
+  const before = new TextDecoder().decode(bytes.subarray(0, good));
+  throw new InputError(
+    'the file is not UTF-8 text',
+    'save it as plain UTF-8 text',
+    positionIn(before, before.length, file),
+  );
+}
+
+function decodedStart(bytes: Uint8Array, length: number, unfinished = false): string | undefined {
+  try {
+    const decoder = new TextDecoder('utf-8', { fatal: true });
+    return decoder.decode(bytes.subarray(0, length), { stream: unfinished });
+  } catch {
+    return undefined;
+  }
+}
+
+function positionIn(text: string, offset: number, file: string): SourcePosition {
+  const lines = text.slice(0, offset).split('\n');
+  return { file, line: lines.length, column: lines.at(-1)!.length + 1 };
+}
+
+function refuseControlCharacters(text: string, file: string): void {
+  const control =
+    // biome-ignore lint/suspicious/noControlCharactersInRegex: control characters are what is looked for
+    /[\u0000-\u0008\u000b\u000c\u000e-\u001f\u007f-\u0084\u0086-\u009f\ufeff\ufffe\uffff]|\r(?!\n)|[\ud800-\udbff](?![\udc00-\udfff])|(?<![\ud800-\udbff])[\udc00-\udfff]/.exec(
+      text,
+    );
+  if (!control) return;
+  const code = control[0].charCodeAt(0).toString(16).toUpperCase().padStart(4, '0');
+  throw new InputError(
+    `the file holds the character U+${code}, which no text needs`,
+    'remove it; a case is plain text with ordinary line ends',
+    positionIn(text, control.index, file),
+  );
+}
