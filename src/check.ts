@@ -8,6 +8,7 @@ import { type Matching, matchProposal, proposalDensity, proposeContinuum } from 
 import { isEquivalent, normalForm } from './limit/normalForm.ts';
 import { printDensity } from './limit/printDensity.ts';
 import { quadraticSign } from './limit/quadraticForm.ts';
+import type { Expression } from './model/action.ts';
 import type { Case, Proposal } from './model/case.ts';
 import { linearForms } from './model/linearForms.ts';
 import { type CheckReport, isFailure } from './report/findings.ts';
@@ -16,6 +17,8 @@ import { analyseConfigurations } from './rough/configurations.ts';
 import { applyRules } from './rules/evaluate.ts';
 import type { Analyses, Verdict } from './rules/facts.ts';
 import type { Rule } from './rules/load.ts';
+import { isDiscreteContinuumShift } from './symmetry/discreteShift.ts';
+import type { ShiftFamily } from './symmetry/family.ts';
 import { transformDensity } from './symmetry/continuumElement.ts';
 import { forbiddingSymmetry } from './symmetry/forbidden.ts';
 import { analysePointGroup } from './symmetry/pointGroup.ts';
@@ -77,13 +80,17 @@ function explainDifferences(matching: Matching, forbids: (monomial: JetMonomial)
 export function checkCase(theCase: Case, rules: readonly Rule[]): CheckReport {
   const { lattice, fields, parent } = theCase;
   const { expansion, proposal, matching: bare, continuum } = expandAndMatch(theCase);
+  const { space } = expansion;
   const latticeForms = parent.terms.flatMap((t) => linearForms(t.expression));
-  const continuumForms = linearForms(proposal.lagrangian);
+  const continuumForms = linearForms(proposal.lagrangian, 'continuum');
+  const discreteInContinuum = (family: ShiftFamily): boolean =>
+    isDiscreteContinuumShift(family, proposal.lagrangian, space.fields);
   const shifts = analyseShifts({
     lattice,
     fields,
     latticeForms,
     continuumForms,
+    discreteInContinuum,
     corrections: correctionMonomials(expansion),
   });
   const pointGroup = analysePointGroup({
@@ -92,16 +99,16 @@ export function checkCase(theCase: Case, rules: readonly Rule[]): CheckReport {
     terms: parent.terms,
     continuum: (element) => isEquivalent(transformDensity(continuum, element), continuum),
   });
-  const { space } = expansion;
   const matching = explainDifferences(bare, (monomial) =>
     forbiddingSymmetry(monomial, { space, lattice, fields, pointGroup, shifts, isTotalDerivative }),
   );
-  const setting = { case: theCase, expansion, matching, proposalDensity: continuum, shifts };
-  const { configurations, byClaim } = analyseConfigurations(setting);
+  const setting = { case: theCase, expansion, matching, proposalDensity: continuum, shifts, pointGroup };
+  const { configurations, byClaim, profiles } = analyseConfigurations(setting);
   const evidence = {
     case: theCase,
     latticeForms,
     continuumForms,
+    discreteInContinuum,
     expansion,
     pointGroup,
     configurations: byClaim,
@@ -114,11 +121,39 @@ export function checkCase(theCase: Case, rules: readonly Rule[]): CheckReport {
     pointGroup,
     configurations,
     charges: chargeEnergies(setting),
-    witness: runWitnesses({ ...setting, configurations }),
+    witness: runWitnesses({ ...setting, configurations, profiles }),
     claims: theCase.claims.map((claim) => judgeClaim(claim, evidence)),
+    compactAsReal: isCompactTreatedAsReal(theCase),
     quadraticForm: quadraticSign(continuum, positiveNames(theCase, proposal)),
   };
   return withVerdict({ analyses, findings: applyRules(rules, analyses), verdict: 'holds' });
+}
+
+/** True when an angle occurs in the parent, but in no periodic function: its period then has no effect. */
+function isCompactTreatedAsReal({ fields, parent }: Case): boolean {
+  const periodic = new Set<string>();
+  const visit = (e: Expression, isPeriodic: boolean): void => {
+    switch (e.kind) {
+      case 'constant':
+        return;
+      case 'linear':
+        if (isPeriodic) for (const name of e.form.keys()) periodic.add(name);
+        return;
+      case 'sum':
+        for (const t of e.terms) visit(t, isPeriodic);
+        return;
+      case 'product':
+        for (const f of e.factors) visit(f, isPeriodic);
+        return;
+      case 'power':
+        visit(e.base, isPeriodic);
+        return;
+      case 'function':
+        visit(e.argument, isPeriodic || e.name === 'cos' || e.name === 'sin' || e.name === 'tan');
+    }
+  };
+  for (const t of parent.terms) visit(t.expression, false);
+  return fields.some((f) => f.values.kind === 'angle' && !periodic.has(f.name));
 }
 
 /** Generators that the author declared positive; spacings always are. */

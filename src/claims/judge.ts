@@ -20,12 +20,15 @@ import { readShiftProfile } from '../symmetry/shiftProfile.ts';
 import { testShiftFamily } from '../symmetry/shifts.ts';
 import { firstCorrection, spaceSpacings } from './corrections.ts';
 import { evaluateCount } from './countFormula.ts';
+import { scalingText } from './scalingText.ts';
 
 /** What judging needs from the analyses. */
 export interface Evidence {
   readonly case: Case;
   readonly latticeForms: readonly LinearForm[];
   readonly continuumForms: readonly LinearForm[] | null;
+  /** Whether a discrete shift of angles leaves the continuum Lagrangian as it is. */
+  readonly discreteInContinuum: (family: ShiftFamily) => boolean;
   readonly expansion: Expansion;
   readonly pointGroup: PointGroupAnalysis;
   /** Configuration of each configuration claim, by claim id. */
@@ -34,11 +37,10 @@ export interface Evidence {
 
 /** Judges one claim. */
 export function judgeClaim(claim: Claim, evidence: Evidence): ClaimVerdict {
-  const { verdict, found } = decide(claim, evidence);
-  return { claim, verdict, found };
+  return { claim, ...decide(claim, evidence) };
 }
 
-type Decision = Pick<ClaimVerdict, 'verdict' | 'found'>;
+type Decision = Omit<ClaimVerdict, 'claim'>;
 
 const holdsIf = (condition: boolean, found: string): Decision => ({
   verdict: condition ? 'holds' : 'fails',
@@ -74,19 +76,24 @@ export function statusOf(lattice: boolean, continuum: boolean): Status {
 function decideShift(claim: Extract<Claim, { kind: 'shift' }>, evidence: Evidence): Decision {
   const { lattice, fields } = evidence.case;
   const families = readShiftProfile(claim.profile.tree, lattice, fields, claim.field);
-  const holds = (forms: readonly LinearForm[], kind: 'lattice' | 'continuum'): boolean =>
-    families.every((f) => testShiftFamily(f, forms, kind));
-  const onLattice = holds(evidence.latticeForms, 'lattice');
+  const onLattice = families.every((f) => testShiftFamily(f, evidence.latticeForms, 'lattice'));
   const subject = `${claim.field} -> ${claim.field} + ${claim.profile.text}`;
   if (!evidence.continuumForms)
     return { verdict: 'undecided', found: `${subject}: no continuum action to compare with` };
-  const inContinuum = holds(evidence.continuumForms, 'continuum');
+  const { continuumForms, discreteInContinuum } = evidence;
+  const inContinuum = families.every((f) =>
+    f.discrete === undefined ? testShiftFamily(f, continuumForms, 'continuum') : discreteInContinuum(f),
+  );
   const status = statusOf(onLattice, inContinuum);
   const say = (is: boolean): string => (is ? 'a symmetry' : 'no symmetry');
   let found = `${subject} is ${say(onLattice)} of the lattice action and ${say(inContinuum)} of the continuum action`;
-  if (status === 'survives' && isRedundancy(families, evidence))
+  const redundancy = status === 'survives' && isRedundancy(families, evidence);
+  if (redundancy)
     found += '; its parameter may depend freely on time, so it is a redundancy of the description';
-  return holdsIf(status === claim.status, status === claim.status ? found : `${found}: ${status}`);
+  return {
+    ...holdsIf(status === claim.status, status === claim.status ? found : `${found}: ${status}`),
+    redundancy,
+  };
 }
 
 /** True when every family stays a symmetry of the lattice with the time coordinate added to its free arguments. */
@@ -118,15 +125,6 @@ function decidePointGroup(
   const continuumRight =
     claim.order !== undefined && group.continuumOrder === claim.order && group.order !== claim.order;
   return holdsIf(claim.status === 'continuum-only' ? continuumRight : !isRight && !continuumRight, found);
-}
-
-/** `a^-2 l^0 t^1`, or `zero`. */
-export function scalingText(scaling: Scaling): string {
-  if (scaling === 'zero') return 'identically zero';
-  const factors = (['a', 'l', 't'] as const)
-    .filter((k) => !scaling[k].isZero)
-    .map((k) => (scaling[k].isOne ? k : `${k}^${scaling[k].isInteger ? scaling[k] : `(${scaling[k]})`}`));
-  return factors.length === 0 ? '1' : factors.join(' ');
 }
 
 function decideConfiguration(
@@ -170,10 +168,8 @@ function decideCorrections(claim: Extract<Claim, { kind: 'corrections' }>, evide
     const first = firstCorrection(expansion, spacings);
     if (first) {
       const order = [...first.order].reduce((sum, [s, n]) => (spacings.has(s) ? sum + n : sum), 0);
-      return holdsIf(
-        order === begin,
-        `corrections in ${name} begin at order ${order}: ${firstTerm(first, expansion)}`,
-      );
+      const text = `corrections in ${name} begin at order ${order}: ${firstTerm(first, expansion)}`;
+      return { ...holdsIf(order === begin, text), corrections: { claimed: begin, found: order } };
     }
     const none = `no correction in ${name} through order ${expansion.through}`;
     if (begin > expansion.through)
@@ -186,7 +182,9 @@ function decideCorrections(claim: Extract<Claim, { kind: 'corrections' }>, evide
     : verdicts.includes('undecided')
       ? 'undecided'
       : 'holds';
-  return { verdict, found: decisions.map((d) => d.found).join('; ') };
+  const found = decisions.map((d) => d.found).join('; ');
+  const wrong = decisions.find((d) => d.verdict === 'fails')?.corrections;
+  return wrong ? { verdict, found, corrections: wrong } : { verdict, found };
 }
 
 function firstTerm(order: ExpansionOrder, expansion: Expansion): string {

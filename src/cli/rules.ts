@@ -2,7 +2,8 @@
 
 import { type Block, heading, prose } from '../report/document.ts';
 import { safeJson, visibleLines } from '../report/escape.ts';
-import { explainRule, factsDocumentation, type Rule } from '../rules/load.ts';
+import { explainRule, type Rule } from '../rules/load.ts';
+import { factsDocumentation } from '../rules/vocabulary.ts';
 import { EXIT, UsageError } from './exitCodes.ts';
 import type { CheckOptions } from './options.ts';
 import { deliver } from './output.ts';

@@ -21,5 +21,5 @@ export function announce(text: string, options: { readonly quiet: boolean }): vo
 /** Reads and checks one case. Throws InputError and LimitError. */
 export function runCase(file: string, rules: readonly Rule[], options: CheckOptions): CheckReport {
   announce(`checking ${file === '-' ? 'standard input' : file}`, options);
-  return checkCase(readCase(readInput(file), file), rules, {});
+  return checkCase(readCase(readInput(file), file), rules);
 }

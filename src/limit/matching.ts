@@ -38,7 +38,7 @@ export interface Matching {
   readonly rescalings: ReadonlyMap<string, Quotient>;
   /** Proposal parameters that the expansion does not determine. */
   readonly undetermined: readonly string[];
-  /** Powers s with which a parent parameter must scale, Π spacing^s, so that the proposal's parameters stay fixed. */
+  /** Powers s with which a parent parameter must scale, Π spacing^s, so that the leading couplings stay fixed. */
   readonly scaling: ReadonlyMap<string, ReadonlyMap<string, Rational>>;
 }
 
@@ -127,7 +127,10 @@ export function matchProposal(theCase: Case, expansion: Expansion, proposal: Pro
     differences,
     rescalings: suggestRescaling(differences, proposal, expansion.space, solve),
     undetermined: proposal.parameters.map((p) => p.name).filter((p) => !parameters.has(p)),
-    scaling: parameterScaling(parameters, theCase),
+    scaling: parameterScaling(
+      expansion.orders.filter((o) => o.total <= 0).flatMap((o) => o.terms.map((t) => t.coefficient)),
+      theCase,
+    ),
   };
 }
 

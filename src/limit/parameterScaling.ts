@@ -1,34 +1,27 @@
-// How the parent's parameters must scale with the spacings so that the proposal's parameters stay fixed: from
-// mu = beta*a^2/b it follows that beta ∝ a^-2 b. Every term of a matched parameter must then carry no spacing, which is a
-// linear system for the exponents; parameters that it leaves free are held fixed.
+// How the parent's parameters must scale with the spacings so that its leading continuum couplings stay fixed: from the
+// coupling beta*a^2/b it follows that beta ∝ a^-2 b. Every term of a coupling must then carry no spacing, which is a linear
+// system for the exponents; parameters that it leaves free are held fixed. The author's matching plays no part, so that a
+// mistake in it does not spoil the powers counted elsewhere.
 
-import type { Quotient } from '../exact/quotient.ts';
+import type { Coefficient, CoefficientTerm } from '../exact/coefficient.ts';
 import { Rational } from '../exact/rational.ts';
 import type { Case } from '../model/case.ts';
 
 /** Exponents by parent parameter and spacing. Parameters missing from the map are held fixed. A spacing for which the
- *  system has no solution (a matched sum whose terms scale differently) is left out altogether. */
+ *  system has no solution (a coupling whose terms scale differently) is left out altogether.
+ *  @param couplings coefficients of the leading order of the expansion. */
 export function parameterScaling(
-  matched: ReadonlyMap<string, Quotient>,
+  couplings: readonly Coefficient[],
   theCase: Case,
 ): Map<string, Map<string, Rational>> {
   const names = theCase.parameters.map((p) => p.name);
-  const rows: { weights: Rational[]; spacings: Map<string, Rational> }[] = [];
-  for (const quotient of matched.values()) {
-    const reference = quotient.denominator.terms[0]!;
-    for (const term of [...quotient.numerator.terms, ...quotient.denominator.terms]) {
-      if (term === reference) continue;
-      const exponent = (g: string): Rational => {
-        const of = (t: typeof term): Rational => t.powers.find(([name]) => name === g)?.[1] ?? Rational.zero;
-        const isNumerator = quotient.numerator.terms.includes(term);
-        return isNumerator ? of(term).sub(of(reference)) : of(reference).sub(of(term));
-      };
-      rows.push({
-        weights: names.map(exponent),
-        spacings: new Map(theCase.lattice.limits.map((s) => [s, exponent(s)])),
-      });
-    }
-  }
+  const exponentIn = (term: CoefficientTerm, g: string): Rational =>
+    term.powers.find(([name]) => name === g)?.[1] ?? Rational.zero;
+  const terms = couplings.flatMap((c) => c.terms);
+  const rows = terms.map((t) => ({
+    weights: names.map((g) => exponentIn(t, g)),
+    spacings: new Map(theCase.lattice.limits.map((s) => [s, exponentIn(t, s)])),
+  }));
   const out = new Map<string, Map<string, Rational>>();
   for (const spacing of theCase.lattice.limits) {
     const solution = leastSolution(

@@ -2,470 +2,198 @@
 // is wrong. Nothing in a file is ever evaluated as code.
 
 import type { Quotient } from '../exact/quotient.ts';
-import { Rational } from '../exact/rational.ts';
 import { readTree } from '../notation/parse.ts';
-import { InputError, NotationError } from '../notation/source.ts';
+import { shortened } from '../notation/part.ts';
 import type { Tree } from '../notation/tree.ts';
 import type { ActionTerm, Expression } from './action.ts';
-import type { Case, ExpandSettings, Proposal } from './case.ts';
+import type { Case, Proposal } from './case.ts';
+import { CaseText } from './caseText.ts';
 import { readClaims } from './claimReader.ts';
-import type { Axis, Field, FieldValues, Lattice, Parameter } from './geometry.ts';
-import { MOST_AXES, MOST_FIELDS, MOST_PARAMETERS } from './limits.ts';
-import { readExpression, readQuotient } from './meaning.ts';
-import type { Names } from './names.ts';
-import { type CaseData, caseSchema, STATEMENTS } from './schema.ts';
+import { readQuotient } from './constants.ts';
+import { type Declarations, readDeclarations } from './declarations.ts';
+import { readContinuumExpression, readLatticeExpression } from './meaning.ts';
+
+import { aperiodicArguments } from './periodicity.ts';
+import { type CaseData, caseSchema } from './schema.ts';
+import { type Scopes, scopes } from './scopes.ts';
+import { subtrees } from './subtrees.ts';
 import { shapeError } from './validate.ts';
 import { type Path, YamlSource } from './yamlSource.ts';
 
-/** Reads one case. Throws InputError with file, line and column for anything wrong. */
+/** Reads one case. Throws InputError with file, line and column for anything wrong.
+ *  @param input the text of the file or its bytes
+ *  @param file its name in messages; `-` for standard input */
 export function readCase(input: string | Uint8Array, file: string): Case {
-  return new CaseReader(YamlSource.read(input, file)).read();
+  const source = YamlSource.read(input, file);
+  const parsed = caseSchema.safeParse(source.toPlain());
+  if (!parsed.success) throw shapeError(parsed.error, source);
+  return new CaseReader(parsed.data, new CaseText(source)).read();
 }
 
-const KNOWN_KEYS = [
-  ...[
-    'case',
-    'title',
-    'lattice',
-    'axes',
-    'vectors',
-    'spacing',
-    'role',
-    'fields',
-    'values',
-    'at',
-    'parameters',
-    'positive',
-  ],
-  ...[
-    'parent',
-    'action',
-    'hamiltonian',
-    'compactness',
-    'name',
-    'term',
-    'proposal',
-    'lagrangian',
-    'matching',
-    'rescaling',
-  ],
-  ...[
-    'limits',
-    'expand',
-    'beyond-leading',
-    'background',
-    'claims',
-    'id',
-    'field',
-    'status',
-    'suppressed',
-    'exponent',
-  ],
-  ...['truncates', 'group', 'order', 'continuum', 'begin', ...STATEMENTS],
-];
+class CaseReader {
+  private readonly declared: Declarations;
+  private readonly names: Scopes;
 
-/** Names with a meaning of their own in the notation. */
-const RESERVED = new Set([
-  'pi',
-  'T',
-  'd',
-  'Delta',
-  'Deltab',
-  'Deltac',
-  'cos',
-  'sin',
-  'tan',
-  'exp',
-  'log',
-  'sqrt',
-  'cosh',
-  'sinh',
-]);
-
-/** What the readers of strings need: the source and the names. Also used for claims. */
-export class CaseReader {
-  private readonly data: CaseData;
-  private readonly warnings: { text: string; position: ReturnType<YamlSource['positionOf']> }[] = [];
-  private readonly used = new Map<string, string>();
-
-  constructor(readonly source: YamlSource) {
-    const plain = source.toPlain();
-    const parsed = caseSchema.safeParse(plain);
-    if (!parsed.success) throw shapeError(parsed.error, source, KNOWN_KEYS);
-    this.data = parsed.data;
+  constructor(
+    private readonly data: CaseData,
+    private readonly text: CaseText,
+  ) {
+    refuseUnhandled(data, text);
+    this.declared = readDeclarations(data, text);
+    this.names = scopes(this.declared);
   }
 
   read(): Case {
-    const { data, source } = this;
-    this.refuseLater();
-    const axes = this.axes();
-    const fields = this.fields(axes);
-    const parameters = this.parameters(data.parameters, ['parameters'], 'parameter');
-    const lattice: Lattice = { axes, limits: this.limits(axes) };
-    const proposalParameters = this.parameters(
-      data.proposal?.parameters,
-      ['proposal', 'parameters'],
-      'parameter of the proposal',
-    );
-    const names = this.names(lattice, fields, parameters, proposalParameters);
-    const terms = this.terms(names.parent, fields);
+    const { data, text, declared } = this;
+    const { lattice, fields, parameters, expand } = declared;
+    const terms = this.terms();
+    const proposal = data.proposal && this.proposal(data.proposal);
+    const claims = readClaims(data.claims ?? [], text, declared, proposal && this.names.duality);
     return {
       id: data.case,
       title: data.title ?? data.case,
-      file: source.file,
-      source: source.text,
+      file: text.source.file,
+      source: text.source.text,
       lattice,
       fields,
       parameters,
       parent: { terms, compactness: data.parent.compactness ?? 'cosine' },
-      proposal: data.proposal && this.proposal(names, proposalParameters),
-      expand: this.expand(fields),
-      claims: readClaims(data.claims ?? [], this, lattice, fields),
-      warnings: this.warnings,
+      proposal,
+      expand,
+      claims,
+      warnings: text.warnings,
     };
   }
 
-  fail(problem: string, mend: string, path: Path, key = false): never {
-    throw new InputError(problem, mend, key ? this.source.positionOfKey(path) : this.source.positionOf(path));
-  }
-
-  /** Reads the string at a path and gives its errors a place in the file. */
-  inString<T>(path: Path, text: string, read: (text: string) => T): T {
-    if (this.source.isPlain(path) && (/[&*]/.test(text) || this.source.commentBehind(path) !== ''))
-      this.warnings.push({
-        text: `this string is not in quotes, and YAML reads ${this.source.commentBehind(path) !== '' ? 'what follows # as a comment' : '& and * in its own way'}; put it in quotes`,
-        position: this.source.positionOf(path),
-      });
-    try {
-      return read(text);
-    } catch (error) {
-      if (!(error instanceof NotationError)) throw error;
-      throw new InputError(error.problem, error.mend, this.source.positionInString(path, error.offset));
-    }
-  }
-
-  /** Exact number at a path. */
-  exact(value: string | number, path: Path): Rational {
-    try {
-      return Rational.parse(String(value));
-    } catch {
-      return this.fail(
-        `"${value}" is not an exact number`,
-        'write p, p/q or a decimal, in quotes if it is a quotient',
-        path,
-      );
-    }
-  }
-
-  /** ASCII spelling of a declared name; refuses clashes and reserved names. */
-  private declare(name: string, what: string, path: Path): string {
-    const tree = this.nameTree(name, path);
-    const clash = this.used.get(tree);
-    if (clash !== undefined)
-      this.fail(`"${tree}" is already the name of a ${clash}`, 'rename one of them', path, true);
-    this.used.set(tree, what);
-    return tree;
-  }
-
-  private nameTree(name: string, path: Path): string {
-    let tree: Tree | undefined;
-    try {
-      tree = readTree(name);
-    } catch (error) {
-      if (!(error instanceof NotationError)) throw error;
-    }
-    if (tree?.kind !== 'symbol' || name.length > 40)
-      return this.fail(
-        `"${name.slice(0, 40)}" cannot be a name`,
-        'use a letter followed by letters, digits and _',
-        path,
-        true,
-      );
-    if (RESERVED.has(tree.name))
-      return this.fail(
-        `"${tree.name}" has a meaning of its own in the notation`,
-        'choose another name',
-        path,
-        true,
-      );
-    return tree.name;
-  }
-
-  private refuseLater(): void {
-    const { parent, lattice } = this.data;
-    const handles = 'this version checks actions on orthogonal lattices with cosines or polynomials';
-    if (parent.hamiltonian)
-      this.fail(
-        'a Hamiltonian parent is not handled',
-        `${handles}; write the action`,
-        ['parent', 'hamiltonian'],
-        true,
-      );
-    if (!parent.action)
-      this.fail('"action" is missing', 'list the terms of the lattice action under parent: action', [
-        'parent',
-      ]);
-    if (lattice.vectors)
-      this.fail(
-        'lattice vectors are not handled',
-        `${handles}; leave vectors out`,
-        ['lattice', 'vectors'],
-        true,
-      );
-    if (parent.compactness && parent.compactness !== 'cosine')
-      this.fail(`compactness ${parent.compactness} is not handled`, `${handles}; write cosine`, [
-        'parent',
-        'compactness',
-      ]);
-  }
-
-  private axes(): Axis[] {
-    const entries = Object.entries(this.data.lattice.axes);
-    const path = ['lattice', 'axes'];
-    if (entries.length === 0) this.fail('there is no axis', 'name at least one, e.g. x: {spacing: a}', path);
-    if (entries.length > MOST_AXES)
-      this.fail(`there are ${entries.length} axes`, `at most ${MOST_AXES} are handled`, path);
-    const axes = entries.map(
-      ([name, { spacing, role }]): Axis => ({
-        name: this.declare(name, 'axis', [...path, name]),
-        spacing: this.nameTree(spacing, [...path, name, 'spacing']),
-        role: role ?? 'space',
-      }),
-    );
-    const times = axes.filter((x) => x.role === 'time');
-    if (times.length > 1)
-      this.fail('there are two time axes', 'keep role: time on one', [...path, times[1]!.name]);
-    for (const [i, { spacing }] of axes.entries())
-      if (this.used.get(spacing) === undefined) this.used.set(spacing, 'lattice spacing');
-      else if (this.used.get(spacing) !== 'lattice spacing')
-        this.fail(
-          `"${spacing}" is already the name of an ${this.used.get(spacing)}`,
-          'choose another symbol for the spacing',
-          [...path, entries[i]![0], 'spacing'],
-        );
-    return axes;
-  }
-
-  private limits(axes: readonly Axis[]): string[] {
-    const times = axes.filter((x) => x.role === 'time');
-    const all = [...new Set([...times, ...axes].map((x) => x.spacing))];
-    const given = this.data.limits?.map((s, i) => {
-      const name = this.nameTree(s, ['limits', i]);
-      if (!all.includes(name))
-        this.fail(`"${s}" is not a spacing`, `the spacings are ${all.join(', ')}`, ['limits', i]);
-      return name;
-    });
-    if (given && (new Set(given).size !== all.length || given.length !== all.length))
-      this.fail('the limits must list every spacing once', `write [${all.join(', ')}] in your order`, [
-        'limits',
-      ]);
-    return given ?? all;
-  }
-
-  private fields(axes: readonly Axis[]): Field[] {
-    const entries = Object.entries(this.data.fields);
-    if (entries.length === 0)
-      this.fail('there is no field', 'declare one, e.g. phi: {values: angle}', ['fields']);
-    if (entries.length > MOST_FIELDS)
-      this.fail(`there are ${entries.length} fields`, `at most ${MOST_FIELDS} are handled`, ['fields']);
-    return entries.map(([name, { values, at }]): Field => {
-      const path = ['fields', name];
-      const offsets = at?.map((v, i) => this.exact(v, [...path, 'at', i])) ?? axes.map(() => Rational.zero);
-      if (offsets.length !== axes.length)
-        this.fail(`"at" has ${offsets.length} entries`, `give one for each of the ${axes.length} axes`, [
-          ...path,
-          'at',
-        ]);
-      if (offsets.some((v) => !v.isZero))
-        this.fail(
-          'fields off the sites are not handled',
-          'this version handles fields on sites; leave "at" out',
-          [...path, 'at'],
-          true,
-        );
-      return { name: this.declare(name, 'field', path), values: this.fieldValues(values, path), at: offsets };
-    });
-  }
-
-  private fieldValues(values: string, path: Path): FieldValues {
-    if (values === 'angle' || values === 'real') return { kind: values };
-    const where = [...path, 'values'];
-    if (values === 'integer' || /^residue \d+$/.test(values))
-      return this.fail(
-        `fields with values "${values}" are not handled`,
-        'this version handles angle and real',
-        where,
-      );
-    return this.fail(`"${values.slice(0, 40)}" is no kind of values`, 'write angle or real', where);
-  }
-
-  private parameters(data: CaseData['parameters'], path: readonly string[], what: string): Parameter[] {
-    const entries = Object.entries(data ?? {});
-    if (entries.length > MOST_PARAMETERS)
-      this.fail(`there are ${entries.length} parameters`, `at most ${MOST_PARAMETERS} are handled`, path);
-    return entries.map(([name, value]) => ({
-      name: this.declare(name, what, [...path, name]),
-      positive: value?.positive ?? false,
-    }));
-  }
-
-  private names(
-    lattice: Lattice,
-    fields: readonly Field[],
-    parent: readonly Parameter[],
-    proposal: readonly Parameter[],
-  ) {
-    const axes = lattice.axes.map((x) => x.name);
-    const fieldNames = fields.map((f) => f.name);
-    const parentNames = parent.map((p) => p.name);
-    const proposalNames = proposal.map((p) => p.name);
-    const common = { axes, fields: fieldNames };
-    const inProposal = new Map(proposalNames.map((n) => [n, 'is a parameter of the proposal']));
-    const inParent = new Map(
-      parentNames.map((n) => [n, 'is a parameter of the parent, not of the proposal']),
-    );
-    return {
-      parent: {
-        ...common,
-        constants: new Set([...parentNames, ...lattice.limits]),
-        elsewhere: inProposal,
-        kind: 'lattice',
-      },
-      proposal: {
-        ...common,
-        constants: new Set([...proposalNames, ...lattice.limits]),
-        elsewhere: inParent,
-        kind: 'continuum',
-      },
-    } satisfies Record<string, Names>;
-  }
-
-  private terms(names: Names, fields: readonly Field[]): ActionTerm[] {
+  private terms(): ActionTerm[] {
     const seen = new Set<string>();
     return this.data.parent.action!.map(({ name, term }, i): ActionTerm => {
       const path = ['parent', 'action', i];
       if (seen.has(name))
-        this.fail(`a second term is called "${name.slice(0, 40)}"`, 'give every term its own name', [
+        this.text.fail(`a second term has the name "${shortened(name)}"`, 'give every term its own name', [
           ...path,
           'name',
         ]);
       seen.add(name);
-      const expression = this.inString([...path, 'term'], term, (text) =>
-        readExpression(readTree(text), names),
-      );
-      if (expression.kind === 'constant')
-        this.fail('this term holds no field', 'leave constants out of the action', [...path, 'term']);
-      this.warnAboutPeriod(expression, fields, [...path, 'term']);
-      return { name, expression, text: term, position: this.source.positionOf([...path, 'term']) };
+      const expression = this.expression(term, [...path, 'term'], 'lattice');
+      return { name, expression, text: term, position: this.text.source.positionOf([...path, 'term']) };
     });
   }
 
-  /** Functions of period 2π need integer weights on angle fields. */
-  private warnAboutPeriod(expression: Expression, fields: readonly Field[], path: Path): void {
-    const angles = new Set(fields.filter((f) => f.values.kind === 'angle').map((f) => f.name));
-    const visit = (e: Expression, isPeriodic: boolean): void => {
-      switch (e.kind) {
-        case 'constant':
-          return;
-        case 'linear':
-          for (const [name, stencil] of e.form)
-            if (isPeriodic && angles.has(name) && !stencil.terms.every((t) => t.weight.asRational?.isInteger))
-              this.warnings.push({
-                text: `${name} is an angle, but this argument is not invariant under ${name} -> ${name} + 2 pi on one site: its weights are no integers`,
-                position: this.source.positionOf(path),
-              });
-          return;
-        case 'sum':
-          for (const t of e.terms) visit(t, isPeriodic);
-          return;
-        case 'product':
-          for (const f of e.factors) visit(f, isPeriodic);
-          return;
-        case 'power':
-          visit(e.base, isPeriodic);
-          return;
-        case 'function':
-          visit(e.argument, e.name === 'cos' || e.name === 'sin' || e.name === 'tan');
-      }
-    };
-    visit(expression, false);
-  }
-
-  private proposal(names: { parent: Names; proposal: Names }, parameters: readonly Parameter[]): Proposal {
-    const data = this.data.proposal!;
+  private proposal(data: NonNullable<CaseData['proposal']>): Proposal {
     const path = ['proposal', 'lagrangian'];
-    const lagrangian = this.inString(path, data.lagrangian, (text) =>
-      readExpression(readTree(text), names.proposal),
-    );
-    if (lagrangian.kind === 'constant')
-      this.fail('this Lagrangian holds no field', 'write the continuum Lagrangian', path);
-    const known = parameters.map((p) => p.name);
-    const matching =
-      data.matching &&
-      this.quotients(
-        data.matching,
-        ['proposal', 'matching'],
-        known,
-        names.parent,
-        'parameter of the proposal',
-      );
-    const rescaling = this.quotients(
-      data.rescaling ?? {},
-      ['proposal', 'rescaling'],
-      names.parent.fields,
-      names.parent,
-      'field',
-    );
+    const { proposalParameters: parameters, fields } = this.declared;
+    const parameterNames = parameters.map((p) => p.name);
+    const fieldNames = fields.map((f) => f.name);
     return {
       parameters,
-      lagrangian,
+      lagrangian: this.expression(data.lagrangian, path, 'continuum'),
       text: data.lagrangian,
-      position: this.source.positionOf(path),
-      matching,
-      rescaling,
+      position: this.text.source.positionOf(path),
+      matching:
+        data.matching &&
+        this.quotients(data.matching, 'matching', parameterNames, 'a parameter of the proposal'),
+      rescaling: this.quotients(data.rescaling ?? {}, 'rescaling', fieldNames, 'a field'),
     };
+  }
+
+  /** The meaning of an action term or a Lagrangian, with the warnings that it deserves. */
+  private expression(written: string, path: Path, kind: 'lattice' | 'continuum'): Expression {
+    const { text } = this;
+    const names = this.names[kind];
+    const read = (tree: Tree): Expression =>
+      kind === 'lattice' ? readLatticeExpression(tree, names) : readContinuumExpression(tree, names);
+    const { tree, expression } = text.expression(written, path, (t) => {
+      const tree = readTree(t);
+      return { tree, expression: read(tree) };
+    });
+    if (expression.kind === 'constant')
+      text.fail(
+        expression.value.isZero ? 'this is zero' : 'no field stands in this expression',
+        'write a function of the fields, or leave it out',
+        path,
+      );
+    const angles = new Set(this.declared.fields.filter((f) => f.values.kind === 'angle').map((f) => f.name));
+    for (const { field, name, span } of aperiodicArguments(tree, read, angles, kind)) {
+      const argument = shortened(written.slice(span.start, span.end));
+      text.warn(
+        `${field} is an angle, but the argument "${argument}" of ${name} is not invariant under ${field} -> ${field} + 2 pi on one site`,
+        path,
+        span.start,
+      );
+    }
+    if (kind === 'continuum') this.warnAboutSpacings(tree, path);
+    return expression;
+  }
+
+  private warnAboutSpacings(tree: Tree, path: Path): void {
+    const { limits } = this.declared.lattice;
+    const seen = new Set<string>();
+    for (const t of subtrees(tree))
+      if (t.kind === 'symbol' && limits.includes(t.name) && !seen.has(t.name)) {
+        seen.add(t.name);
+        this.text.warn(
+          `the spacing ${t.name} stands in the continuum Lagrangian, which has no limit as ${t.name} -> 0 unless that is meant`,
+          path,
+          t.span.start,
+        );
+      }
   }
 
   private quotients(
     data: Readonly<Record<string, string>>,
-    path: readonly string[],
+    key: 'matching' | 'rescaling',
     known: readonly string[],
-    names: Names,
     what: string,
   ): Map<string, Quotient> {
-    return new Map(
-      Object.entries(data).map(([key, text]) => {
-        const name = this.nameTree(key, [...path, key]);
-        if (!known.includes(name))
-          this.fail(
-            `"${key}" is no ${what}`,
-            `these are ${known.join(', ') || 'none'}`,
-            [...path, key],
-            true,
-          );
-        return [name, this.inString([...path, key], text, (t) => readQuotient(readTree(t), names))];
-      }),
-    );
-  }
-
-  private expand(fields: readonly Field[]): ExpandSettings {
-    const data = this.data.expand;
-    const background = Object.entries(data?.background ?? {}).map(([key, value]): [string, Rational] => {
-      const path = ['expand', 'background', key];
-      const name = this.nameTree(key, path);
-      if (!fields.some((f) => f.name === name))
-        this.fail(
-          `"${key}" is no field`,
-          `the fields are ${fields.map((f) => f.name).join(', ')}`,
+    const out = new Map<string, Quotient>();
+    for (const [left, right] of Object.entries(data)) {
+      const path = ['proposal', key, left];
+      const name = this.text.name(left, path, 'key');
+      if (!known.includes(name))
+        this.text.fail(
+          `"${name}" is not ${what}`,
+          known.length === 0 ? 'declare it, or leave this out' : `these are ${known.join(', ')}`,
           path,
-          true,
+          'key',
         );
-      return [name, this.exact(value, path)];
-    });
-    return {
-      beyondLeading: data?.['beyond-leading'] ?? 4,
-      fields: data?.fields,
-      background: new Map(background),
-    };
+      if (out.has(name)) this.text.fail(`"${name}" stands twice here`, 'keep one of the two', path, 'key');
+      const value = this.text.expression(right, path, (t) => readQuotient(readTree(t), this.names.matching));
+      if (key === 'rescaling' && value.isZero)
+        this.text.fail('a field is rescaled by zero', 'write a factor that is not zero', path);
+      out.set(name, value);
+    }
+    return out;
   }
+}
+
+/** Refuses what the schema has a place for and the analyses of this version do not handle. */
+function refuseUnhandled({ parent, lattice }: CaseData, text: CaseText): void {
+  const handles = 'this version handles actions on orthogonal lattices, with cosines or polynomials';
+  if (parent.hamiltonian !== undefined)
+    text.fail(
+      'a parent Hamiltonian is not analysed',
+      `${handles}; write the action in imaginary time under action instead`,
+      ['parent', 'hamiltonian'],
+      'key',
+    );
+  if (lattice.vectors)
+    text.fail(
+      'lattice vectors are not analysed',
+      `${handles}; leave vectors out and write the bonds in shifts along the axes`,
+      ['lattice', 'vectors'],
+      'key',
+    );
+  if (parent.compactness !== undefined && parent.compactness !== 'cosine')
+    text.fail(
+      `the compactness ${parent.compactness} is not analysed`,
+      `${handles}; write compactness: cosine instead`,
+      ['parent', 'compactness'],
+    );
+  if (!parent.action)
+    text.fail(
+      '"action" is missing',
+      'list the terms of the lattice action, e.g. action: [{name: x-link, term: "beta*(1 - cos(Delta_x phi))"}]',
+      ['parent'],
+    );
 }

@@ -71,10 +71,10 @@ export class CaseText {
     const style = this.source.styleOf(path);
     const written = this.source.writtenAt(path);
     if (style === 'QUOTE_DOUBLE') {
-      const escape = SWALLOWING.exec(written)?.[1];
-      if (escape)
+      const swallowed = SWALLOWING.exec(written)?.[1];
+      if (swallowed)
         this.fail(
-          `"${escape}" in double quotes is an escape of YAML and no letter`,
+          `"${swallowed}" in double quotes is an escape of YAML and no letter`,
           'put the string in single quotes',
           path,
         );

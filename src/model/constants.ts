@@ -21,7 +21,11 @@ export function exactly<T>(span: Span, compute: () => T): T {
     return compute();
   } catch (error) {
     if (!(error instanceof RangeError)) throw error;
-    return refuse(error.message, 'rewrite the expression so that it stays exact and short, or declare a parameter for a part', span);
+    return refuse(
+      error.message,
+      'rewrite the expression so that it stays exact and short, or declare a parameter for a part',
+      span,
+    );
   }
 }
 
@@ -71,7 +75,12 @@ export const isFunctionName = (name: string): name is FunctionName =>
   (FUNCTION_NAMES as readonly string[]).includes(name);
 
 /** A function at a constant. Throws NotationError where its value is not exact. */
-export function functionOfConstant(name: FunctionName, argument: Quotient, names: Names, span: Span): Quotient {
+export function functionOfConstant(
+  name: FunctionName,
+  argument: Quotient,
+  names: Names,
+  span: Span,
+): Quotient {
   if (name === 'sqrt') return constantPower(argument, rational(1, 2), names, span);
   const point = argument.asCoefficient;
   const value = point && valueAtConstant(name, point);

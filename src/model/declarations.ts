@@ -3,8 +3,8 @@
 
 import { Rational } from '../exact/rational.ts';
 import { shortened } from '../notation/part.ts';
-import { type CaseText, isYes } from './caseText.ts';
 import type { ExpandSettings } from './case.ts';
+import { type CaseText, isYes } from './caseText.ts';
 import type { Axis, Field, FieldValues, Lattice, Parameter } from './geometry.ts';
 import { MOST_AXES, MOST_FIELDS, MOST_PARAMETERS } from './limits.ts';
 import type { CaseData } from './schema.ts';
@@ -57,7 +57,12 @@ function readAxes(data: CaseData, text: CaseText, declared: DeclaredNames): Axis
   const entries = Object.entries(data.lattice.axes);
   if (entries.length === 0) text.fail('there is no axis', 'name at least one, e.g. x: {spacing: a}', path);
   if (entries.length > MOST_AXES)
-    text.fail(`there are ${entries.length} axes`, `use 1 to ${MOST_AXES}`, [...path, entries[MOST_AXES]![0]], 'key');
+    text.fail(
+      `there are ${entries.length} axes`,
+      `use 1 to ${MOST_AXES}`,
+      [...path, entries[MOST_AXES]![0]],
+      'key',
+    );
   const [, secondTime] = entries.filter(([, axis]) => axis.role === 'time');
   if (secondTime)
     text.fail('there is a second time axis', 'keep role: time on one axis', [...path, secondTime[0], 'role']);
@@ -87,17 +92,17 @@ function readLimits(data: CaseData, text: CaseText, axes: readonly Axis[]): stri
   return given;
 }
 
-function readFields(
-  data: CaseData,
-  text: CaseText,
-  declared: DeclaredNames,
-  axes: readonly Axis[],
-): Field[] {
+function readFields(data: CaseData, text: CaseText, declared: DeclaredNames, axes: readonly Axis[]): Field[] {
   const entries = Object.entries(data.fields);
   if (entries.length === 0)
     text.fail('there is no field', 'declare one, e.g. phi: {values: angle}', ['fields']);
   if (entries.length > MOST_FIELDS)
-    text.fail(`there are ${entries.length} fields`, `use at most ${MOST_FIELDS}`, ['fields', entries[MOST_FIELDS]![0]], 'key');
+    text.fail(
+      `there are ${entries.length} fields`,
+      `use at most ${MOST_FIELDS}`,
+      ['fields', entries[MOST_FIELDS]![0]],
+      'key',
+    );
   return entries.map(([key, { values, at }]): Field => {
     const path = ['fields', key];
     const name = declared.declare(key, 'field', path);

@@ -42,7 +42,8 @@ function keyOf(e: Expression): string {
   }
 }
 
-const coefficientKey = (c: Coefficient): string => `{${c.terms.map((t) => `${t.factor}·${t.key}`).join(';')}}`;
+const coefficientKey = (c: Coefficient): string =>
+  `{${c.terms.map((t) => `${t.factor}·${t.key}`).join(';')}}`;
 const operatorTermKey = (t: LaurentPolynomial['terms'][number]): string =>
   `${t.exponents.join(',')}${coefficientKey(t.weight)}`;
 
@@ -51,7 +52,10 @@ function splitConstant(e: Expression): { weight: Coefficient; rest: Expression }
   if (e.kind !== 'product') return { weight: Coefficient.one, rest: e };
   const [first, ...others] = e.factors;
   if (first?.kind !== 'constant') return { weight: Coefficient.one, rest: e };
-  return { weight: first.value, rest: others.length === 1 ? others[0]! : { kind: 'product', factors: others } };
+  return {
+    weight: first.value,
+    rest: others.length === 1 ? others[0]! : { kind: 'product', factors: others },
+  };
 }
 
 /** Sum with constants added up, linear forms merged and like terms collected. Throws RangeError as productOf does. */
@@ -101,7 +105,11 @@ export function productOf(factors: readonly Expression[]): Expression {
   const [only] = others;
   if (only === undefined) return constantOf(constant);
   if (others.length === 1 && only.kind === 'linear')
-    return linearOrZero(mapOperators(only.form, (p) => boundedOperatorProduct(p, LaurentPolynomial.constant(p.dimension, constant))));
+    return linearOrZero(
+      mapOperators(only.form, (p) =>
+        boundedOperatorProduct(p, LaurentPolynomial.constant(p.dimension, constant)),
+      ),
+    );
   const all = constant.isOne ? others : [constantOf(constant), ...others];
   return all.length === 1 ? all[0]! : { kind: 'product', factors: all };
 }

@@ -3,6 +3,31 @@
 import { InputError, type SourcePosition } from '../notation/source.ts';
 import { LARGEST_FILE } from './limits.ts';
 
+/** Where the lines of a text start. */
+export class Lines {
+  private readonly starts: readonly number[];
+
+  constructor(
+    text: string,
+    private readonly file: string,
+  ) {
+    const starts = [0];
+    for (let at = text.indexOf('\n'); at >= 0; at = text.indexOf('\n', at + 1)) starts.push(at + 1);
+    this.starts = starts;
+  }
+
+  /** One-based line and column (in UTF-16 units) of an offset in the text. */
+  position(offset: number): SourcePosition {
+    let [low, high] = [0, this.starts.length];
+    while (high - low > 1) {
+      const middle = (low + high) >> 1;
+      if (this.starts[middle]! <= offset) low = middle;
+      else high = middle;
+    }
+    return { file: this.file, line: low + 1, column: offset - this.starts[low]! + 1 };
+  }
+}
+
 /** The text of a file. Throws InputError for a file that is too large, no UTF-8, or holds control characters. */
 export function decodeText(input: string | Uint8Array, file: string): string {
   const size = typeof input === 'string' ? Buffer.byteLength(input) : input.byteLength;
@@ -29,11 +54,11 @@ function decodeBytes(bytes: Uint8Array, file: string): string {
     if (decodedStart(bytes, middle, true) === undefined) bad = middle;
     else good = middle;
   }
-  const before = new TextDecoder().decode(bytes.subarray(0, good));
+  const before = decodedStart(bytes, good, true) ?? '';
   throw new InputError(
     'the file is not UTF-8 text',
     'save it as plain UTF-8 text',
-    positionIn(before, before.length, file),
+    new Lines(before, file).position(before.length),
   );
 }
 
@@ -44,11 +69,6 @@ function decodedStart(bytes: Uint8Array, length: number, unfinished = false): st
   } catch {
     return undefined;
   }
-}
-
-function positionIn(text: string, offset: number, file: string): SourcePosition {
-  const lines = text.slice(0, offset).split('\n');
-  return { file, line: lines.length, column: lines.at(-1)!.length + 1 };
 }
 
 function refuseControlCharacters(text: string, file: string): void {
@@ -62,6 +82,6 @@ function refuseControlCharacters(text: string, file: string): void {
   throw new InputError(
     `the file holds the character U+${code}, which no text needs`,
     'remove it; a case is plain text with ordinary line ends',
-    positionIn(text, control.index, file),
+    new Lines(text, file).position(control.index),
   );
 }

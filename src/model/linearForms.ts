@@ -1,20 +1,47 @@
 // The linear forms on which an action depends. A shift of the fields leaves the action as it is if it annihilates all of
 // them, so the list must not be longer than necessary: a polynomial part P(u_1..u_m) depends only on the annihilator of its
-// lineality space {w : P(u + s w) = P(u)}, e.g. (u_1 + u_2)² on u_1 + u_2 alone.
+// lineality space {w : P(u + s w) = P(u) for all u, s}, e.g. (u_1 + u_2)² on u_1 + u_2 alone.
 
 import { Coefficient } from '../exact/coefficient.ts';
 import type { LaurentPolynomial } from '../exact/laurentPolynomial.ts';
+import { reducedEchelon } from '../exact/matrix.ts';
 import { Rational, rational } from '../exact/rational.ts';
 import type { Expression, LinearForm } from './action.ts';
 
-/** The essential linear forms of an expression, without repetition. Forms that enter only linearly and sum to zero over the
- *  lattice (total differences) are left out. */
-export function linearForms(expression: Expression): LinearForm[] {
-  const parts = expression.kind === 'sum' ? expression.terms : [expression];
-  const polynomial = parts.filter(isPolynomial);
-  const others = parts.filter((p) => !isPolynomial(p));
-  const forms = [...polynomialForms(polynomial), ...others.flatMap(argumentForms)];
+/** The essential linear forms of an expression, without repetition. What enters the action only linearly and sums or
+ *  integrates to zero (a total difference on the lattice, a total derivative in the continuum) is left out.
+ *
+ *  The list is minimal over the rational numbers; weights with parameters count as independent of each other, and a
+ *  polynomial with very many monomials keeps its forms as they stand. */
+export function linearForms(expression: Expression, kind: 'lattice' | 'continuum' = 'lattice'): LinearForm[] {
+  return withoutRepetition(formsOfSum(distributed(expression, Coefficient.one), kind));
+}
+
+function withoutRepetition(forms: readonly LinearForm[]): LinearForm[] {
   return forms.filter((f, i) => f.size > 0 && forms.findIndex((g) => sameForm(f, g)) === i);
+}
+
+const sameForm = (x: LinearForm, y: LinearForm): boolean =>
+  x.size === y.size && [...x].every(([name, p]) => y.get(name)?.equals(p) ?? false);
+
+/** The terms of an expression with constant factors multiplied in. */
+function distributed(e: Expression, weight: Coefficient): Expression[] {
+  if (e.kind === 'sum') return e.terms.flatMap((t) => distributed(t, weight));
+  const [first, second, ...more] = e.kind === 'product' ? e.factors : [];
+  if (first?.kind === 'constant' && second)
+    return distributed(
+      more.length === 0 ? second : { kind: 'product', factors: [second, ...more] },
+      weight.mul(first.value),
+    );
+  if (weight.isOne) return [e];
+  return [{ kind: 'product', factors: [{ kind: 'constant', value: weight }, e] }];
+}
+
+/** Forms of a sum of terms. Only at the top of an action (`kind` given) may total differences be left out. */
+function formsOfSum(terms: readonly Expression[], kind: 'lattice' | 'continuum' | undefined): LinearForm[] {
+  const polynomial = terms.filter(isPolynomial);
+  const others = terms.filter((t) => !isPolynomial(t));
+  return [...polynomialForms(polynomial, kind), ...others.flatMap(formsInside)];
 }
 
 function isPolynomial(e: Expression): boolean {
@@ -33,76 +60,104 @@ function isPolynomial(e: Expression): boolean {
   }
 }
 
-/** All forms as they stand, through functions, products and powers. */
-function argumentForms(e: Expression): LinearForm[] {
+/** Forms inside products, negative powers and functions: there nothing sums to zero on its own. */
+function formsInside(e: Expression): LinearForm[] {
   switch (e.kind) {
     case 'constant':
       return [];
     case 'linear':
       return [e.form];
     case 'sum':
-      // A sum inside a product or a function may still hold polynomial parts with fewer forms.
-      return linearForms(e);
+      return formsOfSum(distributed(e, Coefficient.one), undefined);
     case 'product':
-      return e.factors.flatMap(argumentForms);
+      return e.factors.flatMap(formsInside);
     case 'power':
-      return argumentForms(e.base);
+      return formsInside(e.base);
     case 'function':
-      return argumentForms(e.argument);
+      return formsInside(e.argument);
   }
 }
 
-function sameForm(x: LinearForm, y: LinearForm): boolean {
-  return x.size === y.size && [...x].every(([name, p]) => y.get(name)?.equals(p) ?? false);
-}
+/** Exponents of u_1..u_m → weight, by name of the exponents. */
+type Polynomial = Map<string, { readonly exponents: readonly number[]; readonly weight: Coefficient }>;
 
-/** Exponents of u_1..u_m → coefficient. */
-type Polynomial = Map<string, { exponents: number[]; weight: Coefficient }>;
+/** Most monomials of a polynomial for which the minimal set is worked out, and most products on the way to them. */
+const MOST_MONOMIALS = 2000;
+const MOST_PRODUCTS = 100_000;
 
-/** Highest number of forms in one polynomial for which the minimal set is worked out. */
-const MOST_FORMS = 12;
+/** The polynomial has more monomials than are worked out. */
+class TooLarge extends Error {}
 
-function polynomialForms(parts: readonly Expression[]): LinearForm[] {
-  const all: LinearForm[] = [];
-  for (const form of parts.flatMap(allForms)) if (!all.some((g) => sameForm(form, g))) all.push(form);
-  if (all.length > MOST_FORMS) return all;
-  const expanded: Polynomial = new Map();
-  for (const p of parts) for (const t of expand(p, all).values()) addTo(expanded, t.exponents, t.weight);
-  for (const [key, t] of expanded) {
-    const degree = t.exponents.reduce((x, y) => x + y, 0);
-    if (degree === 0 || (degree === 1 && isTotalDifference(all[t.exponents.indexOf(1)]!)))
-      expanded.delete(key);
+function polynomialForms(
+  terms: readonly Expression[],
+  kind: 'lattice' | 'continuum' | undefined,
+): LinearForm[] {
+  const all = withoutRepetition(terms.flatMap(formsAsWritten));
+  try {
+    const variables = independent(all);
+    const polynomial = expanded(terms, variables);
+    polynomial.delete(new Array(variables.forms.length).fill(0).join(','));
+    if (kind) dropTotal(polynomial, variables.forms, kind);
+    return essential(polynomial, variables.forms);
+  } catch (error) {
+    if (!(error instanceof TooLarge)) throw error;
+    return all;
   }
-  return essential(expanded, all);
 }
 
-function allForms(e: Expression): LinearForm[] {
+function formsAsWritten(e: Expression): LinearForm[] {
   switch (e.kind) {
     case 'linear':
       return [e.form];
     case 'sum':
-      return e.terms.flatMap(allForms);
+      return e.terms.flatMap(formsAsWritten);
     case 'product':
-      return e.factors.flatMap(allForms);
+      return e.factors.flatMap(formsAsWritten);
     case 'power':
-      return allForms(e.base);
+      return formsAsWritten(e.base);
     default:
       return [];
   }
 }
 
-/** True when the weights of every operator add up to zero: summed over the lattice the form vanishes. */
-const isTotalDifference = (form: LinearForm): boolean =>
-  [...form.values()].every((p) => p.terms.reduce((s, t) => s.add(t.weight), Coefficient.zero).isZero);
+/** Linearly independent forms u_i over Q, and every form as a combination of them. */
+interface Variables {
+  readonly forms: readonly LinearForm[];
+  readonly combination: (form: LinearForm) => readonly Rational[];
+}
 
-function addTo(p: Polynomial, exponents: number[], weight: Coefficient): void {
+function independent(all: readonly LinearForm[]): Variables {
+  // One row for each site and power product of parameters, one column for each form.
+  const rows = new Map<string, Rational[]>();
+  for (const [column, form] of all.entries())
+    for (const [name, operator] of form)
+      for (const { exponents, weight } of operator.terms)
+        for (const { factor, key } of weight.terms) {
+          const place = `${name}|${exponents.join(',')}|${key}`;
+          const row = rows.get(place) ?? all.map(() => Rational.zero);
+          row[column] = factor;
+          rows.set(place, row);
+        }
+  const echelon = reducedEchelon([...rows.values()], all.length);
+  return {
+    forms: echelon.pivots.map((column) => all[column]!),
+    combination: (form) => {
+      const column = all.findIndex((f) => sameForm(f, form));
+      return echelon.rows.map((row) => row[column]!);
+    },
+  };
+}
+
+function addTo(p: Polynomial, exponents: readonly number[], weight: Coefficient): void {
   const key = exponents.join(',');
   const sum = p.get(key)?.weight.add(weight) ?? weight;
   if (sum.isZero) p.delete(key);
   else p.set(key, { exponents, weight: sum });
+  if (p.size > MOST_MONOMIALS) throw new TooLarge();
 }
 
 function multiply(x: Polynomial, y: Polynomial): Polynomial {
+  if (x.size * y.size > MOST_PRODUCTS) throw new TooLarge();
   const out: Polynomial = new Map();
   for (const s of x.values())
     for (const t of y.values())
@@ -114,30 +169,57 @@ function multiply(x: Polynomial, y: Polynomial): Polynomial {
   return out;
 }
 
-function expand(e: Expression, forms: readonly LinearForm[]): Polynomial {
-  const unit = (i: number): number[] => forms.map((_, k) => (k === i ? 1 : 0));
-  const out: Polynomial = new Map();
-  switch (e.kind) {
-    case 'constant':
-      addTo(out, unit(-1), e.value);
-      return out;
-    case 'linear':
-      addTo(out, unit(forms.findIndex((f) => sameForm(f, e.form))), Coefficient.one);
-      return out;
-    case 'sum':
-      for (const t of e.terms)
-        for (const { exponents, weight } of expand(t, forms).values()) addTo(out, exponents, weight);
-      return out;
-    case 'product':
-      return e.factors.map((f) => expand(f, forms)).reduce(multiply);
-    case 'power': {
-      const base = expand(e.base, forms);
-      addTo(out, unit(-1), Coefficient.one);
-      return Array.from({ length: e.exponent }, () => base).reduce(multiply, out);
+/** A sum of polynomial terms in the variables u_i. */
+function expanded(terms: readonly Expression[], variables: Variables): Polynomial {
+  const exponentsOf = (variable: number): number[] => variables.forms.map((_, k) => (k === variable ? 1 : 0));
+  const constant = (value: Coefficient): Polynomial => {
+    const out: Polynomial = new Map();
+    addTo(out, exponentsOf(-1), value);
+    return out;
+  };
+  const recurse = (e: Expression): Polynomial => {
+    switch (e.kind) {
+      case 'constant':
+        return constant(e.value);
+      case 'linear': {
+        const out: Polynomial = new Map();
+        for (const [i, factor] of variables.combination(e.form).entries())
+          addTo(out, exponentsOf(i), Coefficient.rational(factor));
+        return out;
+      }
+      case 'sum':
+        return expanded(e.terms, variables);
+      case 'product':
+        return e.factors.map(recurse).reduce(multiply);
+      case 'power': {
+        const base = recurse(e.base);
+        return Array.from({ length: e.exponent }, () => base).reduce(multiply, constant(Coefficient.one));
+      }
+      case 'function':
+        throw new Error('a function is no polynomial');
     }
-    case 'function':
-      throw new Error('a function is no polynomial');
-  }
+  };
+  const out: Polynomial = new Map();
+  for (const t of terms)
+    for (const { exponents, weight } of recurse(t).values()) addTo(out, exponents, weight);
+  return out;
+}
+
+const degreeOf = (exponents: readonly number[]): number => exponents.reduce((sum, n) => sum + n, 0);
+
+/** Leaves the linear part out when it sums to zero over the lattice or integrates to zero over space and time. */
+function dropTotal(p: Polynomial, forms: readonly LinearForm[], kind: 'lattice' | 'continuum'): void {
+  const linear = [...p.values()].filter((t) => degreeOf(t.exponents) === 1);
+  const form = combined(linear.map((t) => [t.weight, forms[t.exponents.indexOf(1)]!]));
+  if ([...form.values()].every((operator) => valueOnConstant(operator, kind).isZero))
+    for (const t of linear) p.delete(t.exponents.join(','));
+}
+
+/** What an operator makes of the constant 1: zero for a total difference or derivative. */
+function valueOnConstant(operator: LaurentPolynomial, kind: 'lattice' | 'continuum'): Coefficient {
+  const terms =
+    kind === 'lattice' ? operator.terms : operator.terms.filter((t) => t.exponents.every((n) => n === 0));
+  return terms.reduce((sum, t) => sum.add(t.weight), Coefficient.zero);
 }
 
 /** Basis of the annihilator of the lineality space: the rows w ↦ Σ_i w_i ∂P/∂u_i, one for each monomial and each power
@@ -155,31 +237,17 @@ function essential(p: Polynomial, forms: readonly LinearForm[]): LinearForm[] {
         rows.set(key, row);
       }
     }
-  return independentRows([...rows.values()]).map((row) => combine(row, forms));
+  const { rows: basis } = reducedEchelon([...rows.values()], forms.length);
+  return basis.map((row) => combined(row.map((factor, i) => [Coefficient.rational(factor), forms[i]!])));
 }
 
-/** Reduced echelon rows of a rational matrix. */
-function independentRows(rows: readonly Rational[][]): Rational[][] {
-  const basis: { pivot: number; row: Rational[] }[] = [];
-  const minus = (row: Rational[], other: Rational[], by: Rational): Rational[] =>
-    by.isZero ? row : row.map((x, i) => x.sub(other[i]!.mul(by)));
-  for (const original of rows) {
-    const row = basis.reduce((r, b) => minus(r, b.row, r[b.pivot]!), original);
-    const pivot = row.findIndex((x) => !x.isZero);
-    if (pivot < 0) continue;
-    const scaled = row.map((x) => x.div(row[pivot]!));
-    for (const b of basis) b.row = minus(b.row, scaled, b.row[pivot]!);
-    basis.push({ pivot, row: scaled });
-  }
-  return basis.sort((x, y) => x.pivot - y.pivot).map((b) => b.row);
-}
-
-function combine(row: readonly Rational[], forms: readonly LinearForm[]): LinearForm {
+/** Σ weight × form, without zero operators. */
+function combined(terms: readonly (readonly [weight: Coefficient, form: LinearForm])[]): LinearForm {
   const out = new Map<string, LaurentPolynomial>();
-  for (const [i, factor] of row.entries()) {
-    if (factor.isZero) continue;
-    for (const [name, operator] of forms[i]!) {
-      const scaled = operator.scale(Coefficient.rational(factor));
+  for (const [weight, form] of terms) {
+    if (weight.isZero) continue;
+    for (const [name, operator] of form) {
+      const scaled = operator.scale(weight);
       out.set(name, out.get(name)?.add(scaled) ?? scaled);
     }
   }

@@ -52,8 +52,7 @@ class Reader {
 
   whole(tree: Tree): Expression {
     const expression = this.expression(tree);
-    if (partCount(expression) > MOST_EXPRESSION_PARTS)
-      return this.tooLarge(tree);
+    if (partCount(expression) > MOST_EXPRESSION_PARTS) return this.tooLarge(tree);
     return expression;
   }
 
@@ -80,7 +79,10 @@ class Reader {
       case 'negate':
         return exactly(tree.span, () => productOf([minusOne, recurse(tree.operand)]));
       case 'product':
-        return this.withinPowers(exactly(tree.span, () => productOf(tree.factors.map(recurse))), tree);
+        return this.withinPowers(
+          exactly(tree.span, () => productOf(tree.factors.map(recurse))),
+          tree,
+        );
       case 'quotient':
         return this.quotient(tree);
       case 'power':
@@ -126,7 +128,10 @@ class Reader {
     if (denominator.kind === 'constant' && denominator.value.isZero)
       return refuse('the denominator is zero', 'divide by something else', tree.denominator.span);
     const inverse = this.inverse(denominator, tree.denominator);
-    return this.withinPowers(exactly(tree.span, () => productOf([numerator, inverse])), tree);
+    return this.withinPowers(
+      exactly(tree.span, () => productOf([numerator, inverse])),
+      tree,
+    );
   }
 
   private inverse(e: Expression, tree: Tree): Expression {
@@ -137,10 +142,14 @@ class Reader {
   private power(tree: Extract<Tree, { kind: 'power' }>): Expression {
     const exponent = exponentOf(tree.exponent);
     const base = this.expression(tree.base);
-    if (base.kind === 'constant') return this.constant(constantPower(Quotient.of(base.value), exponent, this.names, tree.span), tree);
+    if (base.kind === 'constant')
+      return this.constant(constantPower(Quotient.of(base.value), exponent, this.names, tree.span), tree);
     if (exponent.sign < 0) this.refuseNegativePower(base, tree.base);
     if (exponent.isInteger)
-      return this.withinPowers(exactly(tree.span, () => powerOf(base, Number(exponent.num))), tree);
+      return this.withinPowers(
+        exactly(tree.span, () => powerOf(base, Number(exponent.num))),
+        tree,
+      );
     if (!exponent.mul(rational(2)).isInteger)
       return refuse(
         `a field expression has no power ${exponent} here`,
@@ -148,7 +157,10 @@ class Reader {
         tree.exponent.span,
       );
     const root = this.call('sqrt', base, tree);
-    return this.withinPowers(exactly(tree.span, () => powerOf(root, Number(exponent.num))), tree);
+    return this.withinPowers(
+      exactly(tree.span, () => powerOf(root, Number(exponent.num))),
+      tree,
+    );
   }
 
   private constant(value: Quotient, tree: Tree): Expression {
@@ -165,7 +177,10 @@ class Reader {
 
   private call(name: FunctionName, argument: Expression, tree: Tree): Expression {
     if (argument.kind === 'constant')
-      return this.constant(functionOfConstant(name, Quotient.of(argument.value), this.names, tree.span), tree);
+      return this.constant(
+        functionOfConstant(name, Quotient.of(argument.value), this.names, tree.span),
+        tree,
+      );
     this.refuseExpansionPoint(name, argument, tree);
     return { kind: 'function', name, argument };
   }
@@ -272,7 +287,8 @@ class Reader {
     return [...form].reduce((sum, [name, p]) => {
       const background = this.names.background.get(name);
       if (!background) return sum;
-      const counted = this.kind === 'lattice' ? p.terms : p.terms.filter((t) => t.exponents.every((n) => n === 0));
+      const counted =
+        this.kind === 'lattice' ? p.terms : p.terms.filter((t) => t.exponents.every((n) => n === 0));
       return counted.reduce((s, t) => s.add(t.weight.scale(background)), sum);
     }, Coefficient.zero);
   }

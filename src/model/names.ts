@@ -23,14 +23,26 @@ export interface Names {
 }
 
 /** Names with a meaning of their own in the notation. */
-const RESERVED: ReadonlySet<string> = new Set(['pi', 'T', 'd', 'Delta', 'Deltab', 'Deltac', ...FUNCTION_NAMES]);
+const RESERVED: ReadonlySet<string> = new Set([
+  'pi',
+  'T',
+  'd',
+  'Delta',
+  'Deltab',
+  'Deltac',
+  ...FUNCTION_NAMES,
+]);
 
 /** The ASCII spelling of a name as the notation reads it (`phi` for φ). Throws NotationError for anything else than one
  *  name, and for a name that the notation keeps for itself. */
 export function readName(text: string): string {
   const mend = 'write a letter followed by letters, digits and _, or one Greek letter';
   if (text.length > LONGEST_NAME)
-    throw new NotationError(`a name of ${text.length} characters is too long`, `use at most ${LONGEST_NAME}`, 0);
+    throw new NotationError(
+      `a name of ${text.length} characters is too long`,
+      `use at most ${LONGEST_NAME}`,
+      0,
+    );
   const [first, second] = tokens(text);
   if (first?.kind === 'operator')
     throw new NotationError(`"${text}" reads as an operator along ${first.axis}`, 'choose another name', 0);

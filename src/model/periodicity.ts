@@ -40,7 +40,8 @@ function bareAngles(
     case 'linear': {
       const isBare = ([name, p]: readonly [string, LaurentPolynomial]): boolean => {
         if (!angles.has(name)) return false;
-        const counted = kind === 'lattice' ? p.terms : p.terms.filter((t) => t.exponents.every((n) => n === 0));
+        const counted =
+          kind === 'lattice' ? p.terms : p.terms.filter((t) => t.exponents.every((n) => n === 0));
         return !integersAllowed || !counted.every((t) => t.weight.asRational?.isInteger);
       };
       return new Set([...e.form].filter(isBare).map(([name]) => name));

@@ -57,7 +57,11 @@ const field = z
 
 const term = z
   .strictObject({
-    name: z.string().min(1).max(2 * LONGEST_NAME).meta({ examples: ['plaquette'] }),
+    name: z
+      .string()
+      .min(1)
+      .max(2 * LONGEST_NAME)
+      .meta({ examples: ['plaquette'] }),
     term: expression('beta*(1 - cos(Delta_x Delta_y phi))'),
   })
   .meta({ examples: [{ name: 'x-link', term: 'beta*(1 - cos(Delta_x phi))' }] });
@@ -65,7 +69,10 @@ const term = z
 const id = identifier.meta({ examples: ['momentum'] });
 const fieldName = name.optional().describe('the field that is meant, when there are several');
 const profile = expression('f(x) + g(y)').describe('a function of the coordinates');
-const twoAxes = z.array(name).length(2).meta({ examples: [['x', 'y']] });
+const twoAxes = z
+  .array(name)
+  .length(2)
+  .meta({ examples: [['x', 'y']] });
 
 /** One kind of claim for each statement. */
 const claims = {
@@ -202,8 +209,18 @@ export const caseSchema = z
       .meta({ examples: [['b', 'a']] }),
     expand: z
       .strictObject({
-        'beyond-leading': z.int().min(0).max(HIGHEST_ORDER).optional().describe('orders beyond the leading one'),
-        fields: z.int().min(1).max(MOST_FIELD_FACTORS).optional().describe('most field factors of a monomial'),
+        'beyond-leading': z
+          .int()
+          .min(0)
+          .max(HIGHEST_ORDER)
+          .optional()
+          .describe('orders beyond the leading one'),
+        fields: z
+          .int()
+          .min(1)
+          .max(MOST_FIELD_FACTORS)
+          .optional()
+          .describe('most field factors of a monomial'),
         background: z
           .record(z.string(), exactNumber)
           .optional()

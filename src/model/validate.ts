@@ -47,7 +47,10 @@ function resolved(issue: Issue, source: YamlSource): Issue {
   if (issue.path[0] === 'claims' && issue.path.length === 2) {
     if (!isMap) return issue;
     inner = issue.errors[STATEMENTS.findIndex((s) => Object.hasOwn(value, s))];
-  } else inner = issue.errors.find((list) => list.some((i) => i.path.length > 0)) ?? issue.errors.find((list) => list.some((i) => i.code === 'unrecognized_keys'));
+  } else
+    inner =
+      issue.errors.find((list) => list.some((i) => i.path.length > 0)) ??
+      issue.errors.find((list) => list.some((i) => i.code === 'unrecognized_keys'));
   const chosen = inner?.find((i) => i.code === 'unrecognized_keys') ?? inner?.[0];
   return chosen ? resolved({ ...chosen, path: [...issue.path, ...chosen.path] } as Issue, source) : issue;
 }
@@ -72,11 +75,12 @@ class ShapeReader {
   }
 
   explain(issue: Issue): InputError {
+    if (this.path.length > 0 && valueAt(this.source, this.path) === undefined) return this.missing();
     switch (issue.code) {
       case 'unrecognized_keys':
         return this.unknownKey(issue.keys[0]!);
       case 'invalid_type':
-        return valueAt(this.source, this.path) === undefined ? this.missing() : this.wrongType(issue.expected);
+        return this.wrongType(issue.expected);
       case 'invalid_value':
         return this.error(
           `${this.label} has a value that is not known`,
@@ -90,7 +94,10 @@ class ShapeReader {
       case 'invalid_union':
         return this.unknownAlternative();
       default:
-        return this.error(`${this.label} is not ${this.schema?.description ?? 'as it should be'}`, this.example);
+        return this.error(
+          `${this.label} is not ${this.schema?.description ?? 'as it should be'}`,
+          this.example,
+        );
     }
   }
 
@@ -142,14 +149,22 @@ class ShapeReader {
     );
   }
 
-  private outOfRange(side: 'least' | 'most', size: string, bound: number | bigint, origin: string): InputError {
+  private outOfRange(
+    side: 'least' | 'most',
+    size: string,
+    bound: number | bigint,
+    origin: string,
+  ): InputError {
     if (origin === 'string')
       return this.error(
         bound === 1 ? `${this.label} is empty` : `${this.label} is too ${size}`,
         bound === 1 ? this.example : `use at ${side} ${bound} characters`,
       );
     if (origin === 'array' || origin === 'set')
-      return this.error(`${this.label} has too ${side === 'most' ? 'many' : 'few'} entries`, `at ${side} ${bound} are read`);
+      return this.error(
+        `${this.label} has too ${side === 'most' ? 'many' : 'few'} entries`,
+        `at ${side} ${bound} are read`,
+      );
     return this.error(`${this.label} is out of range`, `it is at ${side} ${Number(bound)}`);
   }
 
@@ -158,7 +173,9 @@ class ShapeReader {
     const isClaim = this.path[0] === 'claims' && this.path.length === 2;
     if (isClaim && value !== null && typeof value === 'object' && !Array.isArray(value)) {
       const keys = Object.keys(value).filter((k) => k !== 'id');
-      const close = keys.map((k) => [k, didYouMean(k, STATEMENTS, '')] as const).find(([, mend]) => mend !== '');
+      const close = keys
+        .map((k) => [k, didYouMean(k, STATEMENTS, '')] as const)
+        .find(([, mend]) => mend !== '');
       if (close)
         return new InputError(
           `"${shortened(close[0])}" is not a key here`,

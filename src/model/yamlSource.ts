@@ -9,16 +9,16 @@ import {
   isAlias,
   isMap,
   isScalar,
-  LineCounter,
   type Node,
   Parser,
   type Scalar,
   visit,
+  type YAMLError,
   type YAMLMap,
 } from 'yaml';
 import { shortened } from '../notation/part.ts';
 import { InputError, type SourcePosition } from '../notation/source.ts';
-import { decodeText } from './inputText.ts';
+import { decodeText, Lines } from './inputText.ts';
 import { DEEPEST_YAML } from './limits.ts';
 import { sourceOffset } from './scalarOffset.ts';
 
@@ -32,15 +32,15 @@ export class YamlSource {
     readonly file: string,
     readonly text: string,
     private readonly document: Document.Parsed,
-    private readonly lines: LineCounter,
+    private readonly lines: Lines,
   ) {}
 
   /** Reads a text or bytes. Throws InputError for anything that is not one plain YAML document. */
   static read(input: string | Uint8Array, file: string): YamlSource {
     const text = decodeText(input, file);
-    const lines = new LineCounter();
-    const at = (offset: number): SourcePosition => positionAt(lines, file, offset);
-    const tokens = [...new Parser(lines.addNewLine).parse(text)];
+    const lines = new Lines(text, file);
+    const at = (offset: number): SourcePosition => lines.position(offset);
+    const tokens = [...new Parser().parse(text)];
     refuseTokens(tokens, at);
     const composer = new Composer({
       version: '1.2',
@@ -52,7 +52,7 @@ export class YamlSource {
     });
     const [document] = [...composer.compose(tokens, true, text.length)];
     const [problem] = [...document!.errors, ...document!.warnings];
-    if (problem) throw new InputError(...yamlProblem(problem.code, problem.message), at(problem.pos[0]));
+    if (problem) throw yamlError(problem, tokens, at);
     const source = new YamlSource(file, text, document!, lines);
     source.refuseUnwanted();
     return source;
@@ -65,7 +65,7 @@ export class YamlSource {
   }
 
   position(offset: number): SourcePosition {
-    return positionAt(this.lines, this.file, offset);
+    return this.lines.position(offset);
   }
 
   /** Where the value of a path stands, or the closest enclosing one that exists. */
@@ -134,7 +134,8 @@ export class YamlSource {
       Node: (_, node) => {
         if (isAlias(node)) this.refuse('aliases are not read', quotes, node);
         if (node.anchor) this.refuse('anchors are not read', quotes, node);
-        if (node.tag) this.refuse('tags are not read', 'leave the tag out, or put the string in quotes', node);
+        if (node.tag)
+          this.refuse('tags are not read', 'leave the tag out, or put the string in quotes', node);
         if (isMap(node)) this.refuseKeys(node);
       },
     });
@@ -143,20 +144,16 @@ export class YamlSource {
   private refuseKeys(map: YAMLMap): void {
     const seen = new Set<string>();
     for (const { key } of map.items) {
-      if (!isScalar(key) || typeof key.value !== 'string')
-        return this.refuse('a key must be a word', 'write it as a plain word, or in quotes', key ?? map);
-      if (key.value === '__proto__' || key.value === '<<')
-        this.refuse(`"${key.value}" is not a key here`, 'leave it out', key);
-      if (seen.has(key.value))
-        this.refuse(`the key "${shortened(key.value)}" stands twice in one map`, 'keep one of the two', key);
-      seen.add(key.value);
+      const word = isScalar(key) && typeof key.value === 'string' ? key.value : undefined;
+      if (word === undefined)
+        this.refuse('a key must be a word', 'write it as a plain word, or in quotes', key ?? map);
+      else if (word === '__proto__' || word === '<<')
+        this.refuse(`"${word}" is not a key here`, 'leave it out', key);
+      else if (seen.has(word))
+        this.refuse(`the key "${shortened(word)}" stands twice in one map`, 'keep one of the two', key);
+      else seen.add(word);
     }
   }
-}
-
-function positionAt(lines: LineCounter, file: string, offset: number): SourcePosition {
-  const { line, col } = lines.linePos(offset);
-  return { file, line: Math.max(1, line), column: Math.max(1, col) };
 }
 
 /** Refuses directives, a second document, an empty file and deep nesting before the recursive composer sees them. */
@@ -183,23 +180,28 @@ function refuseTokens(tokens: readonly CST.Token[], at: (offset: number) => Sour
   refuseDeepNesting(first.value, at);
 }
 
-/** Walks the tokens without recursion. */
-function refuseDeepNesting(root: CST.Token, at: (offset: number) => SourcePosition): void {
-  const waiting: { token: CST.Token; depth: number }[] = [{ token: root, depth: 1 }];
+/** The token and all within it, with their depths, without recursion. */
+function* within(root: CST.Token): Generator<{ readonly token: CST.Token; readonly depth: number }> {
+  const waiting = [{ token: root, depth: 1 }];
   for (let next = waiting.pop(); next; next = waiting.pop()) {
-    const { token, depth } = next;
-    if (!('items' in token)) continue;
-    if (depth > DEEPEST_YAML)
+    yield next;
+    if (!('items' in next.token)) continue;
+    const depth = next.depth + 1;
+    for (const { key, value } of next.token.items) {
+      if (key) waiting.push({ token: key, depth });
+      if (value) waiting.push({ token: value, depth });
+    }
+  }
+}
+
+function refuseDeepNesting(root: CST.Token, at: (offset: number) => SourcePosition): void {
+  for (const { token, depth } of within(root))
+    if ('items' in token && depth > DEEPEST_YAML)
       throw new InputError(
         `the file is nested deeper than ${DEEPEST_YAML} levels`,
         'remove levels; a case needs six',
         at(token.offset),
       );
-    for (const { key, value } of token.items) {
-      if (key) waiting.push({ token: key, depth: depth + 1 });
-      if (value) waiting.push({ token: value, depth: depth + 1 });
-    }
-  }
 }
 
 const DEFAULT_MEND = 'correct the YAML; strings with special characters belong in quotes';
@@ -213,12 +215,49 @@ const PROBLEMS: Readonly<Record<string, readonly [problem: string, mend: string]
     'put the string in single quotes',
   ],
   MULTILINE_IMPLICIT_KEY: ['a key runs over several lines', 'put strings with ":" in quotes'],
-  BLOCK_AS_IMPLICIT_KEY: ['a second ": " stands on one line', 'put strings with ": " in quotes'],
+  BLOCK_AS_IMPLICIT_KEY: [
+    'a second ": " stands on one line, or a key is not aligned with its siblings',
+    'put strings with ": " in quotes, and align keys with their siblings',
+  ],
   BAD_ALIAS: ['this reads as an alias', 'put strings with * in quotes'],
   TAG_RESOLVE_FAILED: ['tags are not read', 'leave the tag out, or put the string in quotes'],
 };
 
-function yamlProblem(code: string, message: string): readonly [problem: string, mend: string] {
-  const first = message.split('\n')[0]!.replace(/[.:]$/, '');
-  return PROBLEMS[code] ?? [`this is no YAML: ${first}`, DEFAULT_MEND];
+/** What the parser complains about, in our words and at the place where the author can mend it. */
+function yamlError(
+  { code, message, pos }: YAMLError,
+  tokens: readonly CST.Token[],
+  at: (offset: number) => SourcePosition,
+): InputError {
+  const unclosed = /^Missing closing/.test(message) && openingQuote(tokens, pos[0]);
+  if (unclosed !== false && unclosed !== undefined)
+    return new InputError(
+      'a quote is opened and never closed',
+      'close it where the string ends',
+      at(unclosed),
+    );
+  if (/^Flow .* must be sufficiently indented/.test(message))
+    return new InputError(
+      'a bracket is never closed, or the lines inside it are not indented',
+      'close the bracket, or indent the lines inside it',
+      at(pos[0]),
+    );
+  const said = message.split('\n')[0]!.replace(/[.:]$/, '');
+  const [problem, mend] = PROBLEMS[code] ?? [`this is no YAML: ${said}`, DEFAULT_MEND];
+  return new InputError(problem, mend, at(pos[0]));
+}
+
+/** Where the quoted string that ends at an offset begins. */
+function openingQuote(tokens: readonly CST.Token[], end: number): number | undefined {
+  for (const document of tokens) {
+    if (document.type !== 'document' || !document.value) continue;
+    for (const { token } of within(document.value))
+      if (
+        /quoted-scalar$/.test(token.type) &&
+        'source' in token &&
+        token.offset + token.source.length === end
+      )
+        return token.offset;
+  }
+  return undefined;
 }

@@ -27,6 +27,8 @@ export interface ProfileTerm {
 /** Σ_i weight_i Π factors; amplitudes of steps and sites are generic heights. */
 export interface FamilyProfile {
   readonly text: string;
+  /** The field that takes these values; all others are at their vacuum. */
+  readonly field: string;
   readonly terms: readonly ProfileTerm[];
 }
 
@@ -34,8 +36,8 @@ const FREE = ['f', 'g', 'h'];
 const SMOOTH = ['s', 'u'];
 
 /** Reads a profile. Throws NotationError. */
-export function readFamilyProfile(text: string, tree: Tree, lattice: Lattice): FamilyProfile {
-  return { text, terms: readTerms(tree, lattice) };
+export function readFamilyProfile(text: string, tree: Tree, lattice: Lattice, field: string): FamilyProfile {
+  return { text, field, terms: readTerms(tree, lattice) };
 }
 
 const mend = 'write sums of products of f(x), theta(x), delta_site(x), s(x), (-1)^x and powers of coordinates';

@@ -85,7 +85,8 @@ function formOnFamily(
   most: number,
 ): Graded {
   const out: Graded = new Map();
-  for (const stencil of form.values())
+  const stencil = form.get(profile.field);
+  if (stencil)
     for (const { exponents, weight } of stencil.terms) {
       // Parameters inside a form are generic too; they enter as numbers.
       const factor = genericCoefficient(weight);
@@ -223,7 +224,9 @@ export function continuumOrder(
   for (const [m, c] of density.terms) {
     const product = density.space
       .factors(m)
-      .map(({ derivative }) => derivativeOnFamily(profile, derivative, region, time))
+      .map(({ field, derivative }) =>
+        density.space.fields[field] === profile.field ? derivativeOnFamily(profile, derivative, region, time) : [],
+      )
       .reduce(multiplyParts, [{ value: Rational.one, count: noDerivatives }]);
     for (const { value, count } of product) {
       const key = Object.values(count).join(',');

@@ -16,6 +16,10 @@ export interface ClaimVerdict {
   readonly verdict: Verdict;
   /** What the tool found, in one or two sentences with the formula. */
   readonly found: string;
+  /** For shift claims that hold: the parameter may depend freely on time. */
+  readonly redundancy?: boolean;
+  /** For claims about corrections: the claimed first order and the one found. */
+  readonly corrections?: { readonly claimed: number; readonly found: number };
 }
 
 /** Everything the analyses produced for one case. */
@@ -30,6 +34,8 @@ export interface Analyses {
   readonly charges: readonly ChargeEnergy[];
   readonly witness: readonly WitnessRecord[];
   readonly claims: readonly ClaimVerdict[];
+  /** An angle field enters the parent through polynomials only, so that its period plays no part. */
+  readonly compactAsReal: boolean;
   /** Sign of the quadratic form: `indefinite` when a quadratic coefficient has the wrong sign. */
   readonly quadraticForm: 'positive' | 'indefinite' | 'unknown';
 }

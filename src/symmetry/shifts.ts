@@ -30,6 +30,9 @@ export interface ShiftInput {
   readonly latticeForms: readonly LinearForm[];
   /** Linear forms of the continuum Lagrangian in the derivatives; null without one. */
   readonly continuumForms: readonly LinearForm[] | null;
+  /** Whether a discrete shift of angles leaves the continuum Lagrangian as it is: its forms alone do not say which of them stand
+   *  in periodic functions. Left out, every form must be annihilated. */
+  readonly discreteInContinuum?: (family: ShiftFamily) => boolean;
   /** Monomials of the corrections to the continuum action, for what breaks a continuum-only shift. */
   readonly corrections?: readonly CorrectionMonomial[];
 }
@@ -63,9 +66,11 @@ export function analyseShifts(input: ShiftInput): ShiftAnalysis {
     };
   const smooth = shiftSystem('continuum', continuumForms, names, dimension);
   const smoothSearch = searchShifts(smooth, directionsOf(smooth, oblique));
-  const symmetries = found.map((family) =>
-    symmetry(family, true, holdsIn(smooth, continuumForms, family, lattice), input),
-  );
+  const inContinuum = (family: ShiftFamily): boolean =>
+    family.discrete !== undefined && input.discreteInContinuum
+      ? input.discreteInContinuum(family)
+      : holdsIn(smooth, continuumForms, family, lattice);
+  const symmetries = found.map((family) => symmetry(family, true, inContinuum(family), input));
   for (const family of named(smooth, smoothSearch.families, input))
     if (!holdsIn(system, latticeForms, family, lattice))
       symmetries.push(symmetry(family, false, true, input));

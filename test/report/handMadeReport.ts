@@ -258,6 +258,7 @@ export function handMadeReport(
     ],
     claims,
     quadraticForm: 'positive',
+    compactAsReal: false,
     ...parts.analyses,
   };
   return { analyses, findings: [fault], verdict: 'fails', ...parts.report };
