@@ -58,12 +58,19 @@ function splitConstant(e: Expression): { weight: Coefficient; rest: Expression }
   };
 }
 
+/** The terms of a sum, or of a constant times a sum. */
+function summands(e: Expression): readonly Expression[] {
+  if (e.kind === 'sum') return e.terms;
+  const { weight, rest } = splitConstant(e);
+  return rest.kind === 'sum' ? rest.terms.map((t) => productOf([constantOf(weight), t])) : [e];
+}
+
 /** Sum with constants added up, linear forms merged and like terms collected. Throws RangeError as productOf does. */
 export function sumOf(terms: readonly Expression[]): Expression {
   let constant = Coefficient.zero;
   const linear = new Map<string, LaurentPolynomial>();
   const others = new Map<string, { weight: Coefficient; rest: Expression }>();
-  for (const t of terms.flatMap((x) => (x.kind === 'sum' ? x.terms : [x]))) {
+  for (const t of terms.flatMap(summands)) {
     if (t.kind === 'constant') constant = constant.add(t.value);
     else if (t.kind === 'linear')
       for (const [name, p] of t.form) linear.set(name, linear.get(name)?.add(p) ?? p);

@@ -152,8 +152,8 @@ const differenceFacts = scope<Differences>({
   facts: {
     'difference.kind': { type: 'text', meaning: '"agrees", "wrong-coefficient", "missing-from-proposal" or "only-in-proposal"', read: (d) => d.kind },
     'difference.monomial': { type: 'text', meaning: 'the monomial', read: (d, a) => printMonomial(a.expansion.space, d.monomial) },
-    'difference.parent': { type: 'text', meaning: 'coefficient in the expansion', read: (d, a) => printQuotient(d.parent, a.case.lattice.limits) },
-    'difference.proposal': { type: 'text', meaning: 'coefficient in the proposal after matching', read: (d, a) => printQuotient(d.proposal, a.case.lattice.limits) },
+    'difference.parent': { type: 'text', meaning: 'coefficient in the expansion', read: (d, a) => printQuotient(d.parent, [...a.case.lattice.limits].sort()) },
+    'difference.proposal': { type: 'text', meaning: 'coefficient in the proposal after matching', read: (d, a) => printQuotient(d.proposal, [...a.case.lattice.limits].sort()) },
     'difference.ratio': { type: 'text', meaning: 'proposal/parent when a rational number, else none', read: (d) => d.ratio?.toString() ?? null },
     'difference.order': { type: 'number', meaning: 'relative order in the expansion, 0 if it is not in it', read: (d) => number(d.order ?? 0) },
     'difference.forbiddenBy': { type: 'text', meaning: 'exact lattice symmetry that forbids it, none if nothing does', read: (d) => d.forbiddenBy ?? null },
@@ -181,7 +181,7 @@ const couplingFacts = scope<Coupling>({
   items: (a) => [...(a.matching?.parameters ?? [])].map(([name, value]) => ({ name, value })),
   facts: {
     'coupling.name': { type: 'text', meaning: 'name in the proposal', read: (c) => c.name },
-    'coupling.value': { type: 'text', meaning: 'in lattice parameters and spacings', read: (c, a) => printQuotient(c.value, a.case.lattice.limits) },
+    'coupling.value': { type: 'text', meaning: 'in lattice parameters and spacings', read: (c, a) => printQuotient(c.value, [...a.case.lattice.limits].sort()) },
     'coupling.power': { type: 'number', meaning: 'its power of the space spacings at fixed lattice parameters, none if mixed', read: spacingPower },
   },
 });

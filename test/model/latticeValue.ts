@@ -16,6 +16,17 @@ export function field(name: string): Sites {
   return ([x, y]) => rational(((x * x * seed + 13 * x * y + 5 * y + seed) % 17) + y, 1 + ((x + 40) % 3));
 }
 
+/** The same function with its values kept, since nested operators ask for each many times. */
+function kept(f: Sites): Sites {
+  const values = new Map<string, Rational>();
+  return (site) => {
+    const key = site.join();
+    const known = values.get(key) ?? f(site);
+    values.set(key, known);
+    return known;
+  };
+}
+
 const step = (f: Sites, axis: string, by: number): Sites =>
   axis === 'x' ? ([x, y]) => f([x + by, y]) : ([x, y]) => f([x, y + by]);
 const plus =
@@ -28,7 +39,9 @@ const scaled =
     f(site).mul(by);
 
 /** An operator-valued tree applied to a function of the sites. */
-export function act(operator: Tree, f: Sites): Sites {
+const act = (operator: Tree, f: Sites): Sites => kept(acted(operator, f));
+
+function acted(operator: Tree, f: Sites): Sites {
   switch (operator.kind) {
     case 'number':
       return scaled(f, operator.value);
