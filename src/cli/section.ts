@@ -9,7 +9,7 @@ import { configurationBlocks, expansionBlocks, matchingBlocks, symmetryBlocks } 
 import type { CheckReport } from '../report/findings.ts';
 import type { Section } from '../report/json.ts';
 import type { Analyses } from '../rules/facts.ts';
-import type { SecondOpinion } from '../witness/secondOpinion.ts';
+import type { RemainderOpinion, SecondOpinion } from '../witness/secondOpinion.ts';
 import { EXIT } from './exitCodes.ts';
 import type { CheckOptions } from './options.ts';
 import { deliver } from './output.ts';
@@ -45,8 +45,8 @@ function functionsOf(theCase: Case): FunctionName[] {
 /** Highest Taylor order that is compared; the actions in use rarely need more. */
 const OPINION_ORDER = 8;
 
-function opinionBlocks(opinions: readonly SecondOpinion[]): Block[] {
-  if (opinions.length === 0)
+function opinionBlocks({ coefficients, remainders }: Opinions): Block[] {
+  if (coefficients.length === 0)
     return [
       heading(2, 'Second opinion'),
       paragraph('The parent action uses no function, so there is nothing to compare.'),
@@ -59,7 +59,7 @@ function opinionBlocks(opinions: readonly SecondOpinion[]): Block[] {
     {
       kind: 'table',
       head: ['function', 'order', 'ours', 'theirs', ''],
-      rows: opinions.map((o) => [
+      rows: coefficients.map((o) => [
         [o.name],
         [String(o.order)],
         [o.ours],
@@ -67,12 +67,35 @@ function opinionBlocks(opinions: readonly SecondOpinion[]): Block[] {
         [o.agrees ? toned('good', 'agrees') : toned('bad', 'DIFFERS')],
       ]),
     },
+    paragraph(
+      'Remainder of the series at the argument 10^-6, evaluated with 160 digits, against the first term that was cut (both as powers of ten).',
+    ),
+    {
+      kind: 'table',
+      head: ['function', 'cut after', 'remainder', 'next term', ''],
+      rows: remainders.map((o) => [
+        [o.name],
+        [String(o.order)],
+        [`10^${o.remainder.toFixed(3)}`],
+        [`10^${o.nextTerm.toFixed(3)}`],
+        [o.agrees ? toned('good', 'agrees') : toned('bad', 'DIFFERS')],
+      ]),
+    },
   ];
 }
 
-async function opinionsFor(report: CheckReport): Promise<SecondOpinion[]> {
-  const { secondOpinion } = await import('../witness/secondOpinion.ts');
-  return secondOpinion(functionsOf(report.analyses.case), OPINION_ORDER);
+interface Opinions {
+  readonly coefficients: readonly SecondOpinion[];
+  readonly remainders: readonly RemainderOpinion[];
+}
+
+async function opinionsFor(report: CheckReport): Promise<Opinions> {
+  const { remainderOpinion, secondOpinion } = await import('../witness/secondOpinion.ts');
+  const functions = functionsOf(report.analyses.case);
+  return {
+    coefficients: secondOpinion(functions, OPINION_ORDER),
+    remainders: remainderOpinion(functions, OPINION_ORDER),
+  };
 }
 
 /** Prints one section of the report. Returns 0: nothing is judged here. */

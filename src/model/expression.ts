@@ -161,6 +161,24 @@ export function shifted(e: Expression, shift: LaurentPolynomial): Expression {
   }
 }
 
+/** All linear forms as they stand, through sums, products, powers and functions. */
+export function formsOf(e: Expression): LinearForm[] {
+  switch (e.kind) {
+    case 'constant':
+      return [];
+    case 'linear':
+      return [e.form];
+    case 'sum':
+      return e.terms.flatMap(formsOf);
+    case 'product':
+      return e.factors.flatMap(formsOf);
+    case 'power':
+      return formsOf(e.base);
+    case 'function':
+      return formsOf(e.argument);
+  }
+}
+
 /** Number of constants, functions, powers and stencil terms in an expression. */
 export function partCount(e: Expression): number {
   switch (e.kind) {

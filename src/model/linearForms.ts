@@ -7,6 +7,7 @@ import type { LaurentPolynomial } from '../exact/laurentPolynomial.ts';
 import { reducedEchelon } from '../exact/matrix.ts';
 import { Rational, rational } from '../exact/rational.ts';
 import type { Expression, LinearForm } from './action.ts';
+import { formsOf } from './expression.ts';
 
 /** The essential linear forms of an expression, without repetition. What enters the action only linearly and sums or
  *  integrates to zero (a total difference on the lattice, a total derivative in the continuum) is left out.
@@ -92,7 +93,7 @@ function polynomialForms(
   terms: readonly Expression[],
   kind: 'lattice' | 'continuum' | undefined,
 ): LinearForm[] {
-  const all = withoutRepetition(terms.flatMap(formsAsWritten));
+  const all = withoutRepetition(terms.flatMap(formsOf));
   try {
     const variables = independent(all);
     const polynomial = expanded(terms, variables);
@@ -102,21 +103,6 @@ function polynomialForms(
   } catch (error) {
     if (!(error instanceof TooLarge)) throw error;
     return all;
-  }
-}
-
-function formsAsWritten(e: Expression): LinearForm[] {
-  switch (e.kind) {
-    case 'linear':
-      return [e.form];
-    case 'sum':
-      return e.terms.flatMap(formsAsWritten);
-    case 'product':
-      return e.factors.flatMap(formsAsWritten);
-    case 'power':
-      return formsAsWritten(e.base);
-    default:
-      return [];
   }
 }
 

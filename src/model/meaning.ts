@@ -22,6 +22,7 @@ import {
 import {
   composed,
   constantOf,
+  formsOf,
   highestPower,
   partCount,
   powerOf,
@@ -53,6 +54,7 @@ class Reader {
   whole(tree: Tree): Expression {
     const expression = this.expression(tree);
     if (partCount(expression) > MOST_EXPRESSION_PARTS) return this.tooLarge(tree);
+    for (const form of formsOf(expression)) for (const p of form.values()) this.withinReach(p, tree);
     return expression;
   }
 

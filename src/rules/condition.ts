@@ -1,11 +1,9 @@
-// The conditions of rules: boolean expressions over facts, compared exactly. A general-purpose parser splits the text; only the
-// node kinds named here are accepted, every fact must exist with a type that fits, and the evaluation is our own.
+// The conditions of rules: boolean expressions over facts, compared exactly. Every fact must exist with a type that fits; a
+// condition is read when the rule is loaded and never evaluated as code.
 
-import type { MathNode } from 'mathjs';
 import { Rational } from '../exact/rational.ts';
 import { NotationError } from '../notation/source.ts';
 import { nearest } from '../model/names.ts';
-import { parse } from './mathjs.ts';
 import { type FactType, type FactValue, factIn, SCOPES } from './vocabulary.ts';
 
 /** A checked condition. */
@@ -31,113 +29,141 @@ const DEEPEST_CONDITION = 20;
 export function readCondition(text: string, scopeName: string): Condition {
   if (text.length > LONGEST_CONDITION)
     throw new NotationError(`a condition of ${text.length} characters`, `keep it below ${LONGEST_CONDITION}`, 0);
-  let node: MathNode;
-  try {
-    node = parse(text);
-  } catch (error) {
-    const found = /\(char (\d+)\)/.exec(String(error));
-    throw new NotationError('this is no condition', 'write comparisons of facts joined by and, or, not', Math.max(0, Number(found?.[1] ?? 1) - 1));
-  }
-  return new Reader(text, scopeName).condition(node, 0);
+  return new Reader(wordsOf(text), scopeName).whole();
 }
 
-class Reader {
-  constructor(
-    private readonly text: string,
-    private readonly scopeName: string,
-  ) {}
+interface Word {
+  readonly kind: 'name' | 'number' | 'text' | 'sign' | 'end';
+  readonly text: string;
+  readonly offset: number;
+}
 
-  condition(node: MathNode, depth: number): Condition {
-    if (depth > DEEPEST_CONDITION) this.refuse('the condition is nested too deeply', 'split the rule', '');
-    const n = node as AnyNode;
-    if (n.type === 'ParenthesisNode') return this.condition(n.content!, depth + 1);
-    if (n.type === 'OperatorNode' && (n.op === 'and' || n.op === 'or'))
-      return { kind: n.op, parts: n.args!.map((a) => this.condition(a, depth + 1)) };
-    if (n.type === 'OperatorNode' && n.op === 'not')
-      return { kind: 'not', part: this.condition(n.args![0]!, depth + 1) };
-    if (n.type === 'OperatorNode' && COMPARISONS.has(n.op!)) {
-      const [left, right] = n.args!.map((a) => this.operand(a)) as [Operand, Operand];
-      const operator = n.op as '==';
-      this.checkComparison(left, right, operator);
-      return { kind: 'compare', operator, left, right };
-    }
-    const operand = this.operand(node);
-    if (operand.kind !== 'fact' || operand.type !== 'boolean')
-      this.refuse('this part of the condition is neither true nor false', 'compare it with something', this.nameOf(operand));
-    return { kind: 'fact', fact: (operand as { fact: string }).fact };
-  }
+const WORD = /\s*(?:([A-Za-z][\w.]*)|(-?\d{1,15})(?![\w.])|"([^"]*)"|(==|!=|<=|>=|<|>|\(|\)))/y;
 
-  private operand(node: MathNode): Operand {
-    const n = node as AnyNode;
-    if (n.type === 'ParenthesisNode') return this.operand(n.content!);
-    if (n.type === 'ConstantNode') {
-      if (typeof n.value === 'number' && Number.isSafeInteger(n.value))
-        return { kind: 'value', value: Rational.of(n.value), type: 'number' };
-      if (typeof n.value === 'string') return { kind: 'value', value: n.value, type: 'text' };
-      if (typeof n.value === 'boolean') return { kind: 'value', value: n.value, type: 'boolean' };
-      return this.refuse('this constant is not a whole number or a word in quotes', 'write e.g. 2 or "survives"', '');
-    }
-    if (n.type === 'OperatorNode' && n.fn === 'unaryMinus') {
-      const inner = this.operand(n.args![0]!);
-      if (inner.kind === 'value' && inner.value instanceof Rational)
-        return { ...inner, value: inner.value.neg() };
-    }
-    const name = this.factName(n);
-    if (name === 'none') return { kind: 'value', value: null, type: 'none' };
-    const fact = name === undefined ? undefined : factIn(this.scopeName, name);
-    if (name === undefined || !fact) {
-      const known = [...Object.keys(SCOPES[this.scopeName]?.facts ?? {}), ...Object.keys(SCOPES.case!.facts)];
-      const close = name === undefined ? undefined : nearest(name, known);
-      return this.refuse(
-        name === undefined ? 'conditions hold facts, comparisons, and, or, not' : `"${name}" is no fact of ${this.scopeName}`,
-        close ? `did you mean ${close}?` : 'saltus rules facts lists them; put words in quotes',
-        name ?? '',
+function wordsOf(text: string): Word[] {
+  const words: Word[] = [];
+  WORD.lastIndex = 0;
+  for (let at = 0; text.slice(at).trim() !== ''; at = WORD.lastIndex) {
+    const match = WORD.exec(text);
+    if (!match) {
+      const offset = at + text.slice(at).search(/\S/);
+      throw new NotationError(
+        `"${text.slice(offset, offset + 10)}" does not belong in a condition`,
+        'write facts, whole numbers, words in double quotes, == != < <= > >=, and, or, not and parentheses',
+        offset,
       );
     }
-    return { kind: 'fact', fact: name, type: fact.type };
+    const [whole, name, number, quoted, sign] = match;
+    const value = name ?? number ?? quoted ?? sign!;
+    const kind = name !== undefined ? 'name' : number !== undefined ? 'number' : quoted !== undefined ? 'text' : 'sign';
+    words.push({ kind, text: value, offset: at + whole.search(/\S/) });
   }
-
-  private factName(n: AnyNode): string | undefined {
-    if (n.type === 'SymbolNode') return n.name;
-    if (n.type !== 'AccessorNode' || !n.object || !n.index) return undefined;
-    const object = this.factName(n.object as AnyNode);
-    const property = (n.index.dimensions[0] as AnyNode | undefined)?.value;
-    return object !== undefined && typeof property === 'string' ? `${object}.${property}` : undefined;
-  }
-
-  private checkComparison(left: Operand, right: Operand, operator: string): void {
-    const isOrder = operator !== '==' && operator !== '!=';
-    if (left.type === 'none' || right.type === 'none') {
-      if (isOrder) this.refuse('none has no order', 'use == or !=', 'none');
-      return;
-    }
-    if (left.type !== right.type)
-      this.refuse(`a ${left.type} is compared with a ${right.type}`, 'compare facts of one type', this.nameOf(left));
-    if (isOrder && left.type !== 'number')
-      this.refuse(`a ${left.type} has no order`, 'use == or !=', this.nameOf(left));
-  }
-
-  private nameOf(operand: Operand): string {
-    return operand.kind === 'fact' ? operand.fact : String(operand.value ?? '');
-  }
-
-  private refuse(problem: string, mend: string, near: string): never {
-    throw new NotationError(problem, mend, Math.max(0, near === '' ? 0 : this.text.indexOf(near)));
-  }
+  words.push({ kind: 'end', text: '', offset: text.length });
+  return words;
 }
 
 const COMPARISONS = new Set(['==', '!=', '<', '<=', '>', '>=']);
 
-interface AnyNode {
-  readonly type: string;
-  readonly op?: string;
-  readonly fn?: unknown;
-  readonly args?: readonly MathNode[];
-  readonly content?: MathNode;
-  readonly value?: unknown;
-  readonly name?: string;
-  readonly object?: MathNode;
-  readonly index?: { readonly dimensions: readonly MathNode[] };
+/** Recursive descent: or, and, not, comparison. */
+class Reader {
+  private at = 0;
+
+  constructor(
+    private readonly words: readonly Word[],
+    private readonly scopeName: string,
+  ) {}
+
+  whole(): Condition {
+    const condition = this.disjunction(0);
+    if (this.next.kind !== 'end') this.refuse(`"${this.next.text}" is not expected here`, 'join comparisons with and, or');
+    return condition;
+  }
+
+  private get next(): Word {
+    return this.words[this.at]!;
+  }
+
+  private take(text: string): boolean {
+    if (this.next.text !== text || this.next.kind === 'text') return false;
+    this.at++;
+    return true;
+  }
+
+  private disjunction(depth: number): Condition {
+    if (depth > DEEPEST_CONDITION) this.refuse('the condition is nested too deeply', 'split the rule');
+    const parts = [this.conjunction(depth)];
+    while (this.take('or')) parts.push(this.conjunction(depth));
+    return parts.length === 1 ? parts[0]! : { kind: 'or', parts };
+  }
+
+  private conjunction(depth: number): Condition {
+    const parts = [this.negation(depth)];
+    while (this.take('and')) parts.push(this.negation(depth));
+    return parts.length === 1 ? parts[0]! : { kind: 'and', parts };
+  }
+
+  private negation(depth: number): Condition {
+    if (this.take('not')) return { kind: 'not', part: this.negation(depth + 1) };
+    if (this.take('(')) {
+      const inner = this.disjunction(depth + 1);
+      if (!this.take(')')) this.refuse('a parenthesis is not closed', 'add the missing )');
+      return inner;
+    }
+    return this.comparison();
+  }
+
+  private comparison(): Condition {
+    const start = this.next;
+    const left = this.operand();
+    if (!COMPARISONS.has(this.next.text) || this.next.kind !== 'sign') {
+      if (left.kind === 'fact' && left.type === 'boolean') return { kind: 'fact', fact: left.fact };
+      this.refuse(`"${start.text}" is neither true nor false`, 'compare it with something', start);
+    }
+    const operator = this.next.text as '==';
+    this.at++;
+    const right = this.operand();
+    const isOrder = operator !== '==' && operator !== '!=';
+    const types = new Set([left.type, right.type]);
+    types.delete('none');
+    if (types.size > 1) this.refuse(`a ${left.type} is compared with a ${right.type}`, 'compare facts of one type', start);
+    if (isOrder && (types.size === 0 || !types.has('number') || left.type === 'none' || right.type === 'none'))
+      this.refuse('only numbers have an order', 'use == or !=', start);
+    return { kind: 'compare', operator, left, right };
+  }
+
+  private operand(): Operand {
+    const word = this.next;
+    this.at++;
+    switch (word.kind) {
+      case 'number':
+        return { kind: 'value', value: Rational.parse(word.text), type: 'number' };
+      case 'text':
+        return { kind: 'value', value: word.text, type: 'text' };
+      case 'name':
+        if (word.text === 'none') return { kind: 'value', value: null, type: 'none' };
+        if (word.text === 'true' || word.text === 'false')
+          return { kind: 'value', value: word.text === 'true', type: 'boolean' };
+        return this.fact(word);
+      default:
+        return this.refuse('a fact or a value is missing here', 'compare two things', word);
+    }
+  }
+
+  private fact(word: Word): Operand {
+    const fact = factIn(this.scopeName, word.text);
+    if (fact) return { kind: 'fact', fact: word.text, type: fact.type };
+    const known = [...Object.keys(SCOPES[this.scopeName]?.facts ?? {}), ...Object.keys(SCOPES.case!.facts)];
+    const close = nearest(word.text, known);
+    return this.refuse(
+      `"${word.text}" is no fact of ${this.scopeName}`,
+      close ? `did you mean ${close}?` : 'saltus rules facts lists them; put words in double quotes',
+      word,
+    );
+  }
+
+  private refuse(problem: string, mend: string, word: Word = this.next): never {
+    throw new NotationError(problem, mend, word.offset);
+  }
 }
 
 /** Evaluates a condition; `read` gives the value of a fact. A comparison with a missing value (none) is only equal to none, and

@@ -59,8 +59,15 @@ function compileForm(form: LinearForm, values: ReadonlyMap<string, number>, vari
     offset: exponents,
     weight: weight.toNumber(values),
   }));
-  return (site, field) =>
-    points.reduce((sum, { offset, weight }) => sum + weight * field(site.map((x, k) => x + offset[k]!)), 0);
+  const moved: number[] = [];
+  return (site, field) => {
+    let sum = 0;
+    for (const { offset, weight } of points) {
+      for (let k = 0; k < site.length; k++) moved[k] = site[k]! + offset[k]!;
+      sum += weight * field(moved);
+    }
+    return sum;
+  };
 }
 
 /** Σ over the sites of one time slice of a periodic lattice with `size` sites along every space axis. */
@@ -92,16 +99,12 @@ export function sliceSum(
 /** The field with its values on one period remembered, so that every site is computed once. */
 export function tabulated(field: SiteField, size: number, space: readonly number[]): SiteField {
   const table = new Float64Array(size ** space.length).fill(Number.NaN);
-  const wrapped: number[] = [];
   return (site) => {
     let index = 0;
-    for (const axis of space) {
-      const x = ((site[axis]! % size) + size) % size;
-      index = index * size + x;
-    }
+    for (let i = 0; i < space.length; i++) index = index * size + (((site[space[i]!]! % size) + size) % size);
     const known = table[index]!;
     if (!Number.isNaN(known)) return known;
-    for (let k = 0; k < site.length; k++) wrapped[k] = space.includes(k) ? ((site[k]! % size) + size) % size : 0;
+    const wrapped = site.map((x, k) => (space.includes(k) ? ((x % size) + size) % size : 0));
     const value = field(wrapped);
     table[index] = value;
     return value;

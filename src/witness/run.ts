@@ -79,7 +79,8 @@ function familyWitness(
     const field = tabulated(sampled, size, space);
     const parameters = parameterValues(input, size);
     const density = parent.terms.map((t) => compileExpression(t.expression, parameters, profile.field));
-    const vacuum = sliceSum((site) => density.reduce((s, d) => s + d(site, () => 0), 0), () => 0, size, lattice.axes.length, space);
+    const origin = lattice.axes.map(() => 0);
+    const vacuum = density.reduce((s, d) => s + d(origin, () => 0), 0) * size ** space.length;
     const sum = sliceSum((site, f) => density.reduce((s, d) => s + d(site, f), 0), field, size, lattice.axes.length, space);
     values.push(sum - vacuum);
   }

@@ -10,7 +10,7 @@ import { JetSpace } from '../../src/limit/jets.ts';
 import { ExpansionPointError, taylorCoefficients } from '../../src/limit/taylor.ts';
 import type { Expression } from '../../src/model/action.ts';
 import { FUNCTION_NAMES, type FunctionName } from '../../src/notation/tree.ts';
-import { secondOpinion } from '../../src/witness/secondOpinion.ts';
+import { remainderOpinion, secondOpinion } from '../../src/witness/secondOpinion.ts';
 
 const text = (cs: readonly Coefficient[]): string[] =>
   cs.map((c) => c.terms.map((t) => `${t.factor}${t.key && `*${t.key}`}`).join(' + ') || '0');
@@ -19,6 +19,12 @@ describe('the Taylor coefficients', () => {
   it('agree through order 9 with the derivatives that nerdamer, a general-purpose library, computes', () => {
     const opinions = secondOpinion(FUNCTION_NAMES, 9);
     expect(opinions.length).toBe(80);
+    expect(opinions.filter((o) => !o.agrees)).toEqual([]);
+  });
+
+  it('leave the remainder that a multi-precision library (mathjs) finds with 160 digits', () => {
+    const opinions = remainderOpinion(FUNCTION_NAMES, 7);
+    expect(opinions.length).toBe(8);
     expect(opinions.filter((o) => !o.agrees)).toEqual([]);
   });
 

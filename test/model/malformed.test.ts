@@ -188,8 +188,14 @@ const expressions: readonly Row[] = [
   ],
   [
     'nested differences that explode',
-    term(`"${'Delta_x ('.repeat(89)}¦${'Delta_x ('.repeat(11)}phi^2${')'.repeat(100)}"`),
+    term(`"${'Delta_x (sin('.repeat(38)}${'¦'}${'Delta_x (sin('.repeat(12)}phi${'))'.repeat(50)}"`),
     /parts/,
+  ],
+  ['differences that reach too far', term(`"¦${'Delta_x ('.repeat(100)}phi^2${')'.repeat(100)}"`), /reaches/],
+  [
+    'derivatives of too high an order',
+    edited(lagrangian, `"¦${'d_x ('.repeat(65)}phi${')'.repeat(65)}"`),
+    /reaches/,
   ],
 ];
 
