@@ -24,12 +24,14 @@ export interface TorusShiftCount {
 }
 
 /** Time-independent shifts on the periodic lattice with the given sizes, one per space axis in order. Conditions of the form
- *  T_tau λ = λ hold by themselves. Throws RangeError for sizes that do not fit the lattice. */
+ *  T_tau λ = λ hold by themselves. Without `torsion` only the
+ *  U(1) factors are counted. Throws RangeError for sizes that do not fit the lattice. */
 export function torusShiftCount(
   forms: readonly LinearForm[],
   lattice: Lattice,
   fields: readonly Field[],
   sizes: readonly number[],
+  { torsion = true }: { readonly torsion?: boolean } = {},
 ): TorusShiftCount {
   const axes = spaceAxes(lattice);
   if (sizes.length !== axes.length || !sizes.every((n) => Number.isInteger(n) && n > 0))
@@ -53,7 +55,7 @@ export function torusShiftCount(
   const isIntegral = forms.every((form) =>
     [...form.values()].every((d) => d.terms.every((t) => t.weight.asRational?.isInteger)),
   );
-  const torsionPrimes = (isIntegral ? SMALL_PRIMES : [])
+  const torsionPrimes = (isIntegral && torsion ? SMALL_PRIMES : [])
     .map((prime) => ({ prime, factors: fullRank - modulo(prime) }))
     .filter((t) => t.factors > 0);
   return { free: unknowns - fullRank, torsionPrimes, method: isExact ? 'exact' : 'two primes' };

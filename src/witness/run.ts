@@ -19,9 +19,9 @@ export interface WitnessInput extends RoughInput {
 
 /** Sizes by number of space dimensions; each doubles the one before. */
 const FAMILY_SIZES: readonly (readonly number[])[] = [[], [32, 64, 128], [8, 16, 32], [4, 8, 16]];
-const SMOOTH_SIZES: readonly (readonly number[])[] = [[], [16, 32, 64, 128], [8, 16, 32, 64], [8, 16, 32]];
+const SMOOTH_SIZES: readonly (readonly number[])[] = [[], [16, 32, 64, 128], [8, 16, 32], [8, 16, 32]];
 /** Points per direction for the integrals of smooth fields, which are trigonometric polynomials. */
-const QUADRATURE: readonly number[] = [1, 64, 32, 20];
+const QUADRATURE: readonly number[] = [1, 64, 24, 18];
 
 /** Fitted exponents closer than this confirm, farther than the second contradict. */
 const CONFIRMS = 0.25;
