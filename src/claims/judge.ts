@@ -2,7 +2,6 @@
 // verdict comes with what was found, so that a failed claim says what is true instead.
 
 import { torusShiftCount } from '../census/torus.ts';
-import type { Quotient } from '../exact/quotient.ts';
 import { Rational } from '../exact/rational.ts';
 import type { Expansion, ExpansionOrder } from '../limit/expansion.ts';
 import { Density } from '../limit/jets.ts';
@@ -11,7 +10,6 @@ import type { LinearForm } from '../model/action.ts';
 import type { Case } from '../model/case.ts';
 import type { Claim, Status } from '../model/claim.ts';
 import { spaceAxes, timeAxis } from '../model/geometry.ts';
-import { printQuotient } from '../notation/print.ts';
 import type { Configuration, Scaling } from '../rough/profile.ts';
 import type { ClaimVerdict } from '../rules/facts.ts';
 import type { ShiftFamily } from '../symmetry/family.ts';
@@ -228,6 +226,3 @@ function decideCount(claim: Extract<Claim, { kind: 'count' }>, evidence: Evidenc
     found: `the number of U(1) shift symmetries is ${claim.text} on all ${sizesList.length} periodic lattices from ${range}`,
   };
 }
-
-/** `mu = beta*a^2/b`. */
-export const parameterText = (name: string, value: Quotient): string => `${name} = ${printQuotient(value)}`;

@@ -1,8 +1,8 @@
 // `saltus rules`: the rules that would run, one of them explained, or the facts that a rule may use.
 
-import { type Block, heading, prose } from '../report/document.ts';
+import { type Block, heading, paragraph, prose } from '../report/document.ts';
 import { safeJson, visibleLines } from '../report/escape.ts';
-import { explainRule, type Rule } from '../rules/load.ts';
+import type { Rule } from '../rules/load.ts';
 import { factsDocumentation } from '../rules/vocabulary.ts';
 import { EXIT, UsageError } from './exitCodes.ts';
 import type { CheckOptions } from './options.ts';
@@ -19,6 +19,28 @@ function listDocument(rules: readonly Rule[]): Block[] {
       rows: rules.map((r) => [[r.id], [r.level], [r.forEach], prose(r.says)]),
     },
   ];
+}
+
+const listed = (ids: readonly string[]): string => ids.join(', ') || 'no shipped case';
+
+/** One rule in full. */
+function explanation(rule: Rule): Block[] {
+  const { fires, silent } = rule.examples;
+  return [
+    heading(1, rule.id),
+    paragraph(`A ${rule.level}, for each ${rule.forEach}.`),
+    paragraph(`When: ${rule.condition}`),
+    paragraph(...prose(`Says: ${rule.says}`)),
+    paragraph(...prose(`Why: ${rule.why}`)),
+    paragraph(...prose(`Mend: ${rule.mend}`)),
+    paragraph(`Source: ${rule.source}`),
+    paragraph(`Fires on ${listed(fires)}; silent on ${listed(silent)}.`),
+  ];
+}
+
+/** A rule as plain data, with its condition as written. */
+function ruleRecord({ id, level, forEach, condition, says, why, mend, source, examples }: Rule): object {
+  return { rule: id, level, 'for-each': forEach, when: condition, says, why, mend, source, examples };
 }
 
 function find(rules: readonly Rule[], id: string | undefined): Rule {
@@ -48,15 +70,14 @@ export async function rules(
     return EXIT.ok;
   }
   const all = rulesFor(options.rules);
-  if (what === 'explain') {
-    const rule = find(all, id);
-    const text =
-      options.format === 'json' ? safeJson(rule) : `${visibleLines(explainRule(rule)).trimEnd()}\n`;
-    deliver(text, options.out);
-  } else
-    deliver(
-      options.format === 'json' ? safeJson(all) : await renderDocument(listDocument(all), options),
-      options.out,
-    );
+  const chosen = what === 'explain' ? [find(all, id)] : all;
+  const document = what === 'explain' ? explanation(chosen[0]!) : listDocument(all);
+  const record = chosen.map(ruleRecord);
+  deliver(
+    options.format === 'json'
+      ? safeJson(what === 'explain' ? record[0] : record)
+      : await renderDocument(document, options),
+    options.out,
+  );
   return EXIT.ok;
 }

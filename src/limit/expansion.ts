@@ -452,8 +452,7 @@ function sortTerms(terms: readonly ExpansionTerm[], space: JetSpace): ExpansionT
       .join(';'),
   }));
   keyed.sort(
-    (x, y) =>
-      x.term.monomial.length - y.term.monomial.length || (x.key < y.key ? -1 : x.key > y.key ? 1 : 0),
+    (x, y) => x.term.monomial.length - y.term.monomial.length || (x.key < y.key ? -1 : x.key > y.key ? 1 : 0),
   );
   return keyed.map((k) => k.term);
 }

@@ -97,8 +97,7 @@ function expand(e: Expression): Product[] {
       return e.factors.map(expand).reduce(multiply);
     case 'power': {
       const base = expand(e.base);
-      if (e.exponent >= 0)
-        return Array.from({ length: e.exponent }, () => base).reduce(multiply, [unit]);
+      if (e.exponent >= 0) return Array.from({ length: e.exponent }, () => base).reduce(multiply, [unit]);
       return [{ coefficient: Coefficient.one, atoms: [opaque('power', base, e.exponent)] }];
     }
     case 'function':

@@ -56,9 +56,11 @@ export function constantPower(base: Quotient, exponent: Rational, names: Names, 
   return exactly(span, () => bounded(base.pow(exponent)));
 }
 
-/** Exact value of a function at a constant: 0 for most functions, 1 for log; undefined where there is none in the ring. */
+/** Exact value of a function at a constant: at 0 for most functions, at 1 for log, at a product of positive numbers and
+ *  parameters for sqrt; undefined where there is none in the ring. */
 export function valueAtConstant(name: FunctionName, point: Coefficient): Coefficient | undefined {
   if (name === 'log') return point.isOne ? Coefficient.zero : undefined;
+  if (name === 'sqrt' && point.asMonomial?.factor.sign === 1) return point.pow(rational(1, 2));
   if (!point.isZero) return undefined;
   return name === 'cos' || name === 'exp' || name === 'cosh' ? Coefficient.one : Coefficient.zero;
 }

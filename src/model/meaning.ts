@@ -301,21 +301,32 @@ class Reader {
 
   /** A negative power is a series about the background, where the base must be a product of numbers and parameters. */
   private refuseNegativePower(base: Expression, tree: Tree): void {
-    const point = this.onBackground(base);
-    if (!point || point.asMonomial) return;
+    const point = exactly(tree.span, () => this.onBackground(base));
+    if (point?.asMonomial) return;
+    if (!point) this.refuseUnknownValue(tree);
+    else
+      refuse(
+        point.isZero
+          ? 'this is divided by, and it vanishes on the constant background'
+          : 'this is divided by, and its constant part is a sum',
+        'write c (1 + u) with a product c of numbers and parameters, or declare a parameter for the constant',
+        tree.span,
+      );
+  }
+
+  private refuseUnknownValue(tree: Tree): void {
     refuse(
-      point.isZero
-        ? 'this is divided by, and it vanishes on the constant background'
-        : 'this is divided by, and its constant part is a sum',
-      'write c (1 + u) with a product c of numbers and parameters, or declare a parameter for the constant',
+      'the value of this on the constant background is not worked out exactly',
+      'let the functions inside have the argument 0 there, or declare a parameter for the constant',
       tree.span,
     );
   }
 
   /** Refuses functions whose Taylor series about the background leaves the exact numbers. */
   private refuseExpansionPoint(name: FunctionName, argument: Expression, tree: Tree): void {
-    const point = this.onBackground(argument);
-    if (!point || this.isExpansionPoint(name, point)) return;
+    const point = exactly(tree.span, () => this.onBackground(argument));
+    if (!point) return this.refuseUnknownValue(tree);
+    if (this.isExpansionPoint(name, point)) return;
     refuse(
       `${name} cannot be expanded exactly about the value that its argument has on the constant background`,
       EXPANSION_MENDS[name],

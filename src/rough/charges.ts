@@ -15,7 +15,9 @@ export function chargeEnergies(input: RoughInput): ChargeEnergy[] {
   const reason = noKineticTerm(input.proposalDensity, timeAxis(lattice));
   return input.shifts.symmetries
     .filter((s) => s.status === 'survives' && s.family.discrete === undefined && !s.redundancy)
-    .filter((s) => fields.every((f, i) => (s.family.prefactor[i]?.length ?? 0) === 0 || f.values.kind === 'angle'))
+    .filter((s) =>
+      fields.every((f, i) => (s.family.prefactor[i]?.length ?? 0) === 0 || f.values.kind === 'angle'),
+    )
     .map(({ family, growth }): ChargeEnergy => {
       const isPolynomial = family.prefactor.some((p) => p.some((t) => t.exponents.some((n) => n > 0)));
       const undecided = isPolynomial
@@ -24,7 +26,8 @@ export function chargeEnergies(input: RoughInput): ChargeEnergy[] {
           ? 'charges of several fields share a kinetic form that is not worked out here'
           : reason;
       const [p, q] = [growth, dimension - growth];
-      const power = (name: string, n: number): string => (n === 0 ? '' : n === 1 ? ` ${name}` : ` ${name}^${n}`);
+      const power = (name: string, n: number): string =>
+        n === 0 ? '' : n === 1 ? ` ${name}` : ` ${name}^${n}`;
       return {
         family: family.profile,
         p: rational(p),

@@ -63,7 +63,8 @@ export function analyseConfigurations(input: RoughInput): ConfigurationAnalysis 
       byClaim.set(claim.id, examine(profile, true));
     }
   for (const { name } of input.case.fields)
-    for (const profile of defaultFamilies(lattice, name, input.shifts, input.pointGroup)) examine(profile, false);
+    for (const profile of defaultFamilies(lattice, name, input.shifts, input.pointGroup))
+      examine(profile, false);
   return { configurations: [...all.values()], byClaim, profiles };
 }
 
@@ -136,7 +137,10 @@ function correctionScalings(
     }));
   const truncates = !scalings.some(
     ({ order, scaling }) =>
-      first?.scaling !== undefined && order > first.order && scaling !== undefined && isAsSingular(scaling, first.scaling.a),
+      first?.scaling !== undefined &&
+      order > first.order &&
+      scaling !== undefined &&
+      isAsSingular(scaling, first.scaling.a),
   );
   return { list, truncates };
 }

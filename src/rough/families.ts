@@ -2,9 +2,9 @@
 // directions, sums of functions of one coordinate each, rough in one direction and smooth in another, and what the shift
 // analysis found. Families that a lattice symmetry maps into each other are examined once.
 
+import { type Lattice, spaceAxes } from '../model/geometry.ts';
 import { readTree } from '../notation/parse.ts';
 import { NotationError } from '../notation/source.ts';
-import { type Lattice, spaceAxes } from '../model/geometry.ts';
 import type { ShiftAnalysis } from '../symmetry/family.ts';
 import type { PointGroupAnalysis } from '../symmetry/pointGroup.ts';
 import { type FamilyProfile, type ProfileFactor, readFamilyProfile } from './familyProfile.ts';
@@ -15,7 +15,7 @@ const FREE = ['f', 'g', 'h'];
 function defaultTexts(lattice: Lattice): string[] {
   const names = spaceAxes(lattice).map((k) => lattice.axes[k]!.name);
   const subsets = names
-    .reduce<string[][]>((all, name) => [...all, ...all.map((s) => [...s, name])], [[]])
+    .reduce<string[][]>((all, name) => all.concat(all.map((s) => [...s, name])), [[]])
     .filter((s) => s.length > 0)
     .sort((x, y) => x.length - y.length);
   const product = (call: string, s: readonly string[]): string => s.map((x) => `${call}(${x})`).join(' ');
@@ -41,7 +41,11 @@ export function defaultFamilies(
   pointGroup: PointGroupAnalysis,
 ): FamilyProfile[] {
   const found = shifts.symmetries
-    .filter((s) => s.family.discrete === undefined && (s.family.free.length > 0 || s.family.phase.some((p) => !p.isZero)))
+    .filter(
+      (s) =>
+        s.family.discrete === undefined &&
+        (s.family.free.length > 0 || s.family.phase.some((p) => !p.isZero)),
+    )
     .map((s) => s.family.profile);
   const seen = new Set<string>();
   return [...defaultTexts(lattice), ...found].flatMap((text) => {

@@ -40,7 +40,8 @@ export function readFamilyProfile(text: string, tree: Tree, lattice: Lattice, fi
   return { text, field, terms: readTerms(tree, lattice) };
 }
 
-const mend = 'write sums of products of f(x), theta(x), delta_site(x), s(x), (-1)^x and powers of coordinates';
+const mend =
+  'write sums of products of f(x), theta(x), delta_site(x), s(x), (-1)^x and powers of coordinates';
 
 function refuse(tree: Tree, problem: string): never {
   throw new NotationError(problem, mend, tree.span.start);
@@ -56,7 +57,8 @@ function readTerms(tree: Tree, lattice: Lattice): ProfileTerm[] {
       return tree.factors.map((f) => readTerms(f, lattice)).reduce(multiply);
     case 'quotient': {
       const divisor = rationalValue(tree.denominator);
-      if (!divisor || divisor.isZero) return refuse(tree.denominator, 'a profile is divided by something that is no number');
+      if (!divisor || divisor.isZero)
+        return refuse(tree.denominator, 'a profile is divided by something that is no number');
       return readTerms(tree.numerator, lattice).map((t) => ({ ...t, weight: t.weight.div(divisor) }));
     }
     case 'number':
@@ -87,7 +89,9 @@ function readPower(tree: Extract<Tree, { kind: 'power' }>, lattice: Lattice): Pr
   if (tree.base.kind === 'symbol')
     return [{ weight: Rational.one, factors: [coordinate(tree.base, power, lattice)] }];
   const factor = readTerms(tree.base, lattice);
-  return Array.from({ length: power }, () => factor).reduce(multiply, [{ weight: Rational.one, factors: [] }]);
+  return Array.from({ length: power }, () => factor).reduce(multiply, [
+    { weight: Rational.one, factors: [] },
+  ]);
 }
 
 function coordinate(tree: Extract<Tree, { kind: 'symbol' }>, power: number, lattice: Lattice): ProfileFactor {
@@ -103,7 +107,8 @@ function readFactor(tree: Tree, lattice: Lattice): ProfileFactor {
   if (FREE.includes(tree.name)) return { kind: 'free', name: tree.name, arguments: functionals };
   if (SMOOTH.includes(tree.name)) return { kind: 'smooth', name: tree.name, arguments: functionals };
   const kind = tree.name === 'theta' ? 'step' : tree.name === 'delta_site' ? 'site' : undefined;
-  if (!kind || functionals.length !== 1) return refuse(tree, `"${tree.name}" with ${functionals.length} arguments is no profile`);
+  if (!kind || functionals.length !== 1)
+    return refuse(tree, `"${tree.name}" with ${functionals.length} arguments is no profile`);
   return { kind, functional: functionals[0]! };
 }
 

@@ -39,7 +39,9 @@ export function mixedActionText(
 function expressionText(e: Expression, kinds: readonly string[], lattice: Lattice): string | undefined {
   switch (e.kind) {
     case 'constant':
-      return e.value.terms.length > 1 ? `(${printCoefficient(e.value, lattice.limits)})` : printCoefficient(e.value, lattice.limits);
+      return e.value.terms.length > 1
+        ? `(${printCoefficient(e.value, lattice.limits)})`
+        : printCoefficient(e.value, lattice.limits);
     case 'linear':
       return formText(e.form, kinds, lattice);
     case 'sum': {
@@ -113,7 +115,12 @@ function operatorText(operator: LaurentPolynomial, kinds: readonly string[], lat
       lattice.axes[k]!.spacing,
       rational(kinds[k] === 'rough' ? 0 : n),
     ]);
-    const full = weight.mul(Coefficient.monomial(Rational.one, spacings.filter(([, n]) => !n.isZero)));
+    const full = weight.mul(
+      Coefficient.monomial(
+        Rational.one,
+        spacings.filter(([, n]) => !n.isZero),
+      ),
+    );
     const letters = exponents.flatMap((n, k) => {
       if (n === 0) return [];
       const letter = `${kinds[k] === 'rough' ? 'T' : 'd'}_${lattice.axes[k]!.name}`;
@@ -121,7 +128,11 @@ function operatorText(operator: LaurentPolynomial, kinds: readonly string[], lat
     });
     const factor = printCoefficient(full, lattice.limits);
     if (letters.length === 0) return factor;
-    return factor === '1' ? letters.join(' ') : factor === '-1' ? `-${letters.join(' ')}` : `${factor} ${letters.join(' ')}`;
+    return factor === '1'
+      ? letters.join(' ')
+      : factor === '-1'
+        ? `-${letters.join(' ')}`
+        : `${factor} ${letters.join(' ')}`;
   });
   if (words.length === 1) return words[0] === '1' ? '' : words[0]!;
   return `(${words.reverse().join(' + ').replaceAll('+ -', '- ')})`;

@@ -54,7 +54,9 @@ export function latticeOrder(
   region: Region,
   time: number | undefined,
 ): SmoothOrder | undefined {
-  const isRough = profile.terms.every((t) => t.factors.every((f) => f.kind !== 'smooth' && f.kind !== 'coordinate'));
+  const isRough = profile.terms.every((t) =>
+    t.factors.every((f) => f.kind !== 'smooth' && f.kind !== 'coordinate'),
+  );
   const space = new JetSpace(['amplitude'], ['space', 'time']);
   const form = (f: LinearForm, most: number): Map<JetMonomial, Coefficient> => {
     const out = new Map<JetMonomial, Coefficient>();
@@ -124,7 +126,8 @@ function factorAt(
     case 'site': {
       const place = region.places.get(functionalKey(factor.functional))!;
       const height = genericValue(nameOf(factor));
-      if (typeof place !== 'number') return gradedConstant(factor.kind === 'step' && place === 'right' ? height : Rational.zero);
+      if (typeof place !== 'number')
+        return gradedConstant(factor.kind === 'step' && place === 'right' ? height : Rational.zero);
       const distance = place + valueAt(factor.functional, offset);
       const isOn = factor.kind === 'step' ? distance >= 0 : distance === 0;
       return gradedConstant(isOn ? height : Rational.zero);
@@ -165,7 +168,11 @@ function coordinateAt(
   const out: Graded = new Map();
   let binomial = Rational.one;
   for (let n = 0; n <= Math.min(power, most); n++) {
-    addGraded(out, axis === time ? { space: 0, time: n } : { space: n, time: 0 }, binomial.mul(v.pow(n)).mul(x.pow(power - n)));
+    addGraded(
+      out,
+      axis === time ? { space: 0, time: n } : { space: n, time: 0 },
+      binomial.mul(v.pow(n)).mul(x.pow(power - n)),
+    );
     binomial = binomial.mul(rational(power - n)).div(rational(n + 1));
   }
   return out;
@@ -225,7 +232,9 @@ export function continuumOrder(
     const product = density.space
       .factors(m)
       .map(({ field, derivative }) =>
-        density.space.fields[field] === profile.field ? derivativeOnFamily(profile, derivative, region, time) : [],
+        density.space.fields[field] === profile.field
+          ? derivativeOnFamily(profile, derivative, region, time)
+          : [],
       )
       .reduce(multiplyParts, [{ value: Rational.one, count: noDerivatives }]);
     for (const { value, count } of product) {
@@ -274,11 +283,13 @@ function derivativeOnFamily(
   time: number | undefined,
 ): Part[] {
   return profile.terms.flatMap((term) => {
-    const start = term.factors.map((factor): Differentiated => ({
-      factor,
-      orders: argumentsOf(factor).map(() => 0),
-      count: noDerivatives,
-    }));
+    const start = term.factors.map(
+      (factor): Differentiated => ({
+        factor,
+        orders: argumentsOf(factor).map(() => 0),
+        count: noDerivatives,
+      }),
+    );
     let products: { weight: Rational; factors: readonly Differentiated[] }[] = [
       { weight: term.weight, factors: start },
     ];
@@ -293,7 +304,7 @@ function derivativeOnFamily(
           ),
         );
     return products.map(({ weight, factors }): Part => {
-      const value = factors.reduce((v, f) => v.mul(valueOf(f, region)), weight);
+      const value = factors.reduce((v, f) => v.mul(valueAtPoint(f, region)), weight);
       return { value, count: factors.map((f) => f.count).reduce(addCounts, noDerivatives) };
     });
   });
@@ -338,7 +349,7 @@ function differentiate(
 }
 
 /** Value at the generic point. Near its jump every derivative of a step or a site is generic; away from it there is none. */
-function valueOf({ factor, orders }: Differentiated, region: Region): Rational {
+function valueAtPoint({ factor, orders }: Differentiated, region: Region): Rational {
   const total = orders.reduce((x, y) => x + y, 0);
   switch (factor.kind) {
     case 'free':

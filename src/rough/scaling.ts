@@ -139,7 +139,10 @@ function reachOf(expression: Expression): number {
   const see = (form: LinearForm): void => {
     for (const stencil of form.values())
       for (const { exponents } of stencil.terms)
-        reach = Math.max(reach, exponents.reduce((sum, n) => sum + Math.abs(n), 0));
+        reach = Math.max(
+          reach,
+          exponents.reduce((sum, n) => sum + Math.abs(n), 0),
+        );
   };
   const visit = (e: Expression): void => {
     if (e.kind === 'linear') see(e.form);
@@ -158,7 +161,10 @@ export function densityScaling(
   profile: FamilyProfile,
   setting: ScalingSetting,
 ): FullScaling | undefined {
-  const groups = new Map<string, { powers: { a: Rational; b: Rational }; terms: Map<JetMonomial, Coefficient> }>();
+  const groups = new Map<
+    string,
+    { powers: { a: Rational; b: Rational }; terms: Map<JetMonomial, Coefficient> }
+  >();
   for (const [m, c] of density.terms)
     for (const term of c.terms) {
       const powers = setting.powersOf(term);

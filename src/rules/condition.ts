@@ -2,8 +2,8 @@
 // condition is read when the rule is loaded and never evaluated as code.
 
 import { Rational } from '../exact/rational.ts';
-import { NotationError } from '../notation/source.ts';
 import { nearest } from '../model/names.ts';
+import { NotationError } from '../notation/source.ts';
 import { type FactType, type FactValue, factIn, SCOPES } from './vocabulary.ts';
 
 /** A checked condition. */
@@ -28,7 +28,11 @@ const DEEPEST_CONDITION = 20;
 /** Reads a condition for a scope. Throws NotationError with the offset of what is wrong. */
 export function readCondition(text: string, scopeName: string): Condition {
   if (text.length > LONGEST_CONDITION)
-    throw new NotationError(`a condition of ${text.length} characters`, `keep it below ${LONGEST_CONDITION}`, 0);
+    throw new NotationError(
+      `a condition of ${text.length} characters`,
+      `keep it below ${LONGEST_CONDITION}`,
+      0,
+    );
   return new Reader(wordsOf(text), scopeName).whole();
 }
 
@@ -55,7 +59,8 @@ function wordsOf(text: string): Word[] {
     }
     const [whole, name, number, quoted, sign] = match;
     const value = name ?? number ?? quoted ?? sign!;
-    const kind = name !== undefined ? 'name' : number !== undefined ? 'number' : quoted !== undefined ? 'text' : 'sign';
+    const kind =
+      name !== undefined ? 'name' : number !== undefined ? 'number' : quoted !== undefined ? 'text' : 'sign';
     words.push({ kind, text: value, offset: at + whole.search(/\S/) });
   }
   words.push({ kind: 'end', text: '', offset: text.length });
@@ -75,7 +80,8 @@ class Reader {
 
   whole(): Condition {
     const condition = this.disjunction(0);
-    if (this.next.kind !== 'end') this.refuse(`"${this.next.text}" is not expected here`, 'join comparisons with and, or');
+    if (this.next.kind !== 'end')
+      this.refuse(`"${this.next.text}" is not expected here`, 'join comparisons with and, or');
     return condition;
   }
 
@@ -125,8 +131,12 @@ class Reader {
     const isOrder = operator !== '==' && operator !== '!=';
     const types = new Set([left.type, right.type]);
     types.delete('none');
-    if (types.size > 1) this.refuse(`a ${left.type} is compared with a ${right.type}`, 'compare facts of one type', start);
-    if (isOrder && (types.size === 0 || !types.has('number') || left.type === 'none' || right.type === 'none'))
+    if (types.size > 1)
+      this.refuse(`a ${left.type} is compared with a ${right.type}`, 'compare facts of one type', start);
+    if (
+      isOrder &&
+      (types.size === 0 || !types.has('number') || left.type === 'none' || right.type === 'none')
+    )
       this.refuse('only numbers have an order', 'use == or !=', start);
     return { kind: 'compare', operator, left, right };
   }
@@ -191,7 +201,13 @@ function compare(x: FactValue, y: FactValue, operator: string): boolean {
   if (operator === '!=') return !isEqual;
   if (!(x instanceof Rational && y instanceof Rational)) return false;
   const order = x.compare(y);
-  return operator === '<' ? order < 0 : operator === '<=' ? order <= 0 : operator === '>' ? order > 0 : order >= 0;
+  return operator === '<'
+    ? order < 0
+    : operator === '<='
+      ? order <= 0
+      : operator === '>'
+        ? order > 0
+        : order >= 0;
 }
 
 /** Names of the facts in a condition, in order, without repetition. */

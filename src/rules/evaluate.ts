@@ -22,10 +22,14 @@ function applyRule(rule: Rule, analyses: Analyses): Finding[] {
     return holds(rule.when, read) ? [read] : [];
   });
   if (firing.length === 0) return [];
-  const statements = [...new Set(firing.map((read) => fillPlaceholders(rule.says, (f) => factText(read(f)))))];
-  const evidence = firing
-    .slice(0, MOST_STATEMENTS)
-    .map((read) => factsOf(rule.when).map((f) => `${f} = ${factText(read(f))}`).join(', '));
+  const statements = [
+    ...new Set(firing.map((read) => fillPlaceholders(rule.says, (f) => factText(read(f))))),
+  ];
+  const evidence = firing.slice(0, MOST_STATEMENTS).map((read) =>
+    factsOf(rule.when)
+      .map((f) => `${f} = ${factText(read(f))}`)
+      .join(', '),
+  );
   const rest = statements.length - MOST_STATEMENTS;
   return [
     {

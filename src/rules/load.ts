@@ -51,12 +51,22 @@ export function loadRules(folders: readonly string[]): Rule[] {
 function ruleFiles(folder: string): string[] {
   let names: string[];
   try {
-    names = readdirSync(folder).filter((n) => n.endsWith('.yaml')).sort();
+    names = readdirSync(folder)
+      .filter((n) => n.endsWith('.yaml'))
+      .sort();
   } catch {
-    throw new InputError('this folder of rules cannot be read', 'name a folder with rule files', { file: folder, line: 1, column: 1 });
+    throw new InputError('this folder of rules cannot be read', 'name a folder with rule files', {
+      file: folder,
+      line: 1,
+      column: 1,
+    });
   }
   if (names.length > MOST_RULES)
-    throw new InputError(`the folder holds ${names.length} rules`, `at most ${MOST_RULES} are read`, { file: folder, line: 1, column: 1 });
+    throw new InputError(`the folder holds ${names.length} rules`, `at most ${MOST_RULES} are read`, {
+      file: folder,
+      line: 1,
+      column: 1,
+    });
   return names.map((n) => join(folder, n));
 }
 
@@ -76,7 +86,11 @@ export function readRule(input: string | Uint8Array, file: string): Rule {
   const data = parsed.data;
   const forEach = data['for-each'];
   if (!SCOPES[forEach])
-    throw new InputError(`"${forEach}" is nothing that rules go through`, `write one of ${Object.keys(SCOPES).join(', ')}`, source.positionOf(['for-each']));
+    throw new InputError(
+      `"${forEach}" is nothing that rules go through`,
+      `write one of ${Object.keys(SCOPES).join(', ')}`,
+      source.positionOf(['for-each']),
+    );
   return {
     id: data.rule,
     level: data.level,
@@ -108,27 +122,15 @@ const PLACEHOLDER = /\{([^{}]*)\}/g;
 function checkPlaceholders(says: string, scope: string): string {
   for (const match of says.matchAll(PLACEHOLDER))
     if (!factIn(scope, match[1]!))
-      throw new NotationError(`"{${match[1]}}" is no fact of ${scope}`, 'saltus rules facts lists them', match.index);
+      throw new NotationError(
+        `"{${match[1]}}" is no fact of ${scope}`,
+        'saltus rules facts lists them',
+        match.index,
+      );
   return oneLine(says);
 }
 
 /** The statement of a rule with its placeholders filled in. */
 export function fillPlaceholders(says: string, text: (fact: string) => string): string {
   return says.replace(PLACEHOLDER, (_, fact: string) => text(fact));
-}
-
-/** A rule in full, for `saltus rules explain`. */
-export function explainRule(rule: Rule): string {
-  return [
-    `${rule.id} (${rule.level}), for each ${rule.forEach}`,
-    '',
-    `When: ${rule.condition}`,
-    `Says: ${rule.says}`,
-    '',
-    `Why:  ${rule.why}`,
-    `Mend: ${rule.mend}`,
-    '',
-    `Source: ${rule.source}`,
-    `Fires on: ${rule.examples.fires.join(', ') || 'no shipped case'}; silent on: ${rule.examples.silent.join(', ') || 'no shipped case'}`,
-  ].join('\n');
 }

@@ -2,7 +2,10 @@
 
 import * as z from 'zod';
 
-const identifier = z.string().regex(/^[a-z0-9][a-z0-9-]*$/, 'an identifier of a-z, 0-9 and -').max(100);
+const identifier = z
+  .string()
+  .regex(/^[a-z0-9][a-z0-9-]*$/, 'an identifier of a-z, 0-9 and -')
+  .max(100);
 const words = z.string().min(1).max(2000);
 
 export const ruleSchema = z.strictObject({

@@ -86,7 +86,8 @@ const caseFacts = scope<Analyses>({
 type Families = Analyses['configurations'][number];
 
 const familyFacts = scope<Families>({
-  meaning: 'a rough configuration family; `leading` is the continuum action, `correction` the first correction that does not vanish on it',
+  meaning:
+    'a rough configuration family; `leading` is the continuum action, `correction` the first correction that does not vanish on it',
   items: (a) => a.configurations,
   facts: {
     'family.profile': { type: 'text', meaning: 'the profile', read: (c) => c.profile },
@@ -95,7 +96,11 @@ const familyFacts = scope<Families>({
       meaning: 'a free function, which may jump everywhere, occurs in it',
       read: (c) => /\b[fgh]\(/.test(c.profile),
     },
-    'family.isStaggered': { type: 'boolean', meaning: 'an alternating sign occurs in it', read: (c) => c.profile.includes('(-1)^') },
+    'family.isStaggered': {
+      type: 'boolean',
+      meaning: 'an alternating sign occurs in it',
+      read: (c) => c.profile.includes('(-1)^'),
+    },
     'family.latticeSuppressed': {
       type: 'boolean',
       meaning: 'the lattice action diverges on it as a → 0',
@@ -106,9 +111,21 @@ const familyFacts = scope<Families>({
       meaning: 'the continuum action diverges on it as a → 0',
       read: (c) => c.suppressed.continuum ?? c.suppressed.lattice,
     },
-    'family.latticeExponent': { type: 'exponent', meaning: 'powers of the lattice action, none if identically zero', read: (c) => exponentOf(c.lattice) },
-    'family.truncates': { type: 'boolean', meaning: 'the series in a is an expansion on it', read: (c) => c.truncates },
-    'leading.exponent': { type: 'exponent', meaning: 'powers of the continuum action, none if identically zero', read: (c) => exponentOf(c.continuum) },
+    'family.latticeExponent': {
+      type: 'exponent',
+      meaning: 'powers of the lattice action, none if identically zero',
+      read: (c) => exponentOf(c.lattice),
+    },
+    'family.truncates': {
+      type: 'boolean',
+      meaning: 'the series in a is an expansion on it',
+      read: (c) => c.truncates,
+    },
+    'leading.exponent': {
+      type: 'exponent',
+      meaning: 'powers of the continuum action, none if identically zero',
+      read: (c) => exponentOf(c.continuum),
+    },
     'correction.order': {
       type: 'number',
       meaning: 'order of the first correction that does not vanish, 0 if all do',
@@ -134,13 +151,41 @@ const symmetryFacts = scope<Symmetries>({
   items: (a) => a.shifts.symmetries,
   facts: {
     'symmetry.profile': { type: 'text', meaning: 'the shift parameter', read: (s) => s.family.profile },
-    'symmetry.status': { type: 'text', meaning: '"survives", "continuum-only" or "lattice-only"', read: (s) => s.status },
-    'symmetry.growth': { type: 'number', meaning: 'number of free space coordinates', read: (s) => number(s.growth) },
-    'symmetry.isStaggered': { type: 'boolean', meaning: 'an alternating sign or a root of unity is in it', read: (s) => s.family.phase.some((p) => !p.isZero) },
-    'symmetry.isDiscrete': { type: 'boolean', meaning: 'only discrete shifts of an angle', read: (s) => s.family.discrete !== undefined },
-    'symmetry.isRedundancy': { type: 'boolean', meaning: 'the parameter may depend freely on time', read: (s) => s.redundancy },
-    'symmetry.brokenBy': { type: 'text', meaning: 'the lowest correction that breaks it, none if no order kept does', read: (s) => s.brokenBy?.text ?? null },
-    'symmetry.brokenAt': { type: 'number', meaning: 'order of that correction, 0 if none', read: (s) => number(s.brokenBy?.order ?? 0) },
+    'symmetry.status': {
+      type: 'text',
+      meaning: '"survives", "continuum-only" or "lattice-only"',
+      read: (s) => s.status,
+    },
+    'symmetry.growth': {
+      type: 'number',
+      meaning: 'number of free space coordinates',
+      read: (s) => number(s.growth),
+    },
+    'symmetry.isStaggered': {
+      type: 'boolean',
+      meaning: 'an alternating sign or a root of unity is in it',
+      read: (s) => s.family.phase.some((p) => !p.isZero),
+    },
+    'symmetry.isDiscrete': {
+      type: 'boolean',
+      meaning: 'only discrete shifts of an angle',
+      read: (s) => s.family.discrete !== undefined,
+    },
+    'symmetry.isRedundancy': {
+      type: 'boolean',
+      meaning: 'the parameter may depend freely on time',
+      read: (s) => s.redundancy,
+    },
+    'symmetry.brokenBy': {
+      type: 'text',
+      meaning: 'the lowest correction that breaks it, none if no order kept does',
+      read: (s) => s.brokenBy?.text ?? null,
+    },
+    'symmetry.brokenAt': {
+      type: 'number',
+      meaning: 'order of that correction, 0 if none',
+      read: (s) => number(s.brokenBy?.order ?? 0),
+    },
   },
 });
 
@@ -150,13 +195,41 @@ const differenceFacts = scope<Differences>({
   meaning: 'a monomial of the matching between expansion and proposal',
   items: (a) => (a.case.proposal ? (a.matching?.differences ?? []) : []),
   facts: {
-    'difference.kind': { type: 'text', meaning: '"agrees", "wrong-coefficient", "missing-from-proposal" or "only-in-proposal"', read: (d) => d.kind },
-    'difference.monomial': { type: 'text', meaning: 'the monomial', read: (d, a) => printMonomial(a.expansion.space, d.monomial) },
-    'difference.parent': { type: 'text', meaning: 'coefficient in the expansion', read: (d, a) => printQuotient(d.parent, [...a.case.lattice.limits].sort()) },
-    'difference.proposal': { type: 'text', meaning: 'coefficient in the proposal after matching', read: (d, a) => printQuotient(d.proposal, [...a.case.lattice.limits].sort()) },
-    'difference.ratio': { type: 'text', meaning: 'proposal/parent when a rational number, else none', read: (d) => d.ratio?.toString() ?? null },
-    'difference.order': { type: 'number', meaning: 'relative order in the expansion, 0 if it is not in it', read: (d) => number(d.order ?? 0) },
-    'difference.forbiddenBy': { type: 'text', meaning: 'exact lattice symmetry that forbids it, none if nothing does', read: (d) => d.forbiddenBy ?? null },
+    'difference.kind': {
+      type: 'text',
+      meaning: '"agrees", "wrong-coefficient", "missing-from-proposal" or "only-in-proposal"',
+      read: (d) => d.kind,
+    },
+    'difference.monomial': {
+      type: 'text',
+      meaning: 'the monomial',
+      read: (d, a) => printMonomial(a.expansion.space, d.monomial),
+    },
+    'difference.parent': {
+      type: 'text',
+      meaning: 'coefficient in the expansion',
+      read: (d, a) => printQuotient(d.parent, [...a.case.lattice.limits].sort()),
+    },
+    'difference.proposal': {
+      type: 'text',
+      meaning: 'coefficient in the proposal after matching',
+      read: (d, a) => printQuotient(d.proposal, [...a.case.lattice.limits].sort()),
+    },
+    'difference.ratio': {
+      type: 'text',
+      meaning: 'proposal/parent when a rational number, else none',
+      read: (d) => d.ratio?.toString() ?? null,
+    },
+    'difference.order': {
+      type: 'number',
+      meaning: 'relative order in the expansion, 0 if it is not in it',
+      read: (d) => number(d.order ?? 0),
+    },
+    'difference.forbiddenBy': {
+      type: 'text',
+      meaning: 'exact lattice symmetry that forbids it, none if nothing does',
+      read: (d) => d.forbiddenBy ?? null,
+    },
   },
 });
 
@@ -181,8 +254,16 @@ const couplingFacts = scope<Coupling>({
   items: (a) => [...(a.matching?.parameters ?? [])].map(([name, value]) => ({ name, value })),
   facts: {
     'coupling.name': { type: 'text', meaning: 'name in the proposal', read: (c) => c.name },
-    'coupling.value': { type: 'text', meaning: 'in lattice parameters and spacings', read: (c, a) => printQuotient(c.value, [...a.case.lattice.limits].sort()) },
-    'coupling.power': { type: 'number', meaning: 'its power of the space spacings at fixed lattice parameters, none if mixed', read: spacingPower },
+    'coupling.value': {
+      type: 'text',
+      meaning: 'in lattice parameters and spacings',
+      read: (c, a) => printQuotient(c.value, [...a.case.lattice.limits].sort()),
+    },
+    'coupling.power': {
+      type: 'number',
+      meaning: 'its power of the space spacings at fixed lattice parameters, none if mixed',
+      read: spacingPower,
+    },
   },
 });
 
@@ -194,7 +275,11 @@ const chargeFacts = scope<Charges>({
   facts: {
     'charge.family': { type: 'text', meaning: 'the shift family', read: (c) => c.family },
     'charge.energy': { type: 'text', meaning: 'its energy in powers of a and l', read: (c) => c.text },
-    'charge.limitsCommute': { type: 'boolean', meaning: 'a → 0 and l → ∞ may be exchanged in it', read: (c) => c.limitsCommute },
+    'charge.limitsCommute': {
+      type: 'boolean',
+      meaning: 'a → 0 and l → ∞ may be exchanged in it',
+      read: (c) => c.limitsCommute,
+    },
   },
 });
 
@@ -207,9 +292,21 @@ const claimFacts = scope<Claims>({
     'claim.id': { type: 'text', meaning: 'identifier', read: (c) => c.claim.id },
     'claim.kind': { type: 'text', meaning: 'what it states, e.g. "shift"', read: (c) => c.claim.kind },
     'claim.verdict': { type: 'text', meaning: '"holds", "fails" or "undecided"', read: (c) => c.verdict },
-    'claim.isRedundancy': { type: 'boolean', meaning: 'a shift that holds, with a parameter that may depend freely on time', read: (c) => c.redundancy ?? false },
-    'claim.claimedOrder': { type: 'number', meaning: 'claimed first order of the corrections, 0 for other claims', read: (c) => number(c.corrections?.claimed ?? 0) },
-    'claim.foundOrder': { type: 'number', meaning: 'first order found, 0 for other claims', read: (c) => number(c.corrections?.found ?? 0) },
+    'claim.isRedundancy': {
+      type: 'boolean',
+      meaning: 'a shift that holds, with a parameter that may depend freely on time',
+      read: (c) => c.redundancy ?? false,
+    },
+    'claim.claimedOrder': {
+      type: 'number',
+      meaning: 'claimed first order of the corrections, 0 for other claims',
+      read: (c) => number(c.corrections?.claimed ?? 0),
+    },
+    'claim.foundOrder': {
+      type: 'number',
+      meaning: 'first order found, 0 for other claims',
+      read: (c) => number(c.corrections?.found ?? 0),
+    },
   },
 });
 
@@ -220,7 +317,11 @@ const witnessFacts = scope<Witnesses>({
   items: (a) => a.witness,
   facts: {
     'witness.subject': { type: 'text', meaning: 'what was summed', read: (w) => w.subject },
-    'witness.verdict': { type: 'text', meaning: '"confirms", "contradicts" or "inconclusive"', read: (w) => w.verdict },
+    'witness.verdict': {
+      type: 'text',
+      meaning: '"confirms", "contradicts" or "inconclusive"',
+      read: (w) => w.verdict,
+    },
     'witness.text': { type: 'text', meaning: 'the result in words', read: (w) => w.text },
   },
 });
@@ -238,7 +339,11 @@ const termFacts = scope<Terms>({
   items: (a) => a.expansion.byTerm,
   facts: {
     'term.name': { type: 'text', meaning: 'its name', read: (t) => t.name },
-    'term.vanishes': { type: 'boolean', meaning: 'its expansion is a total derivative as far as it was followed', read: (t) => t.leading === undefined },
+    'term.vanishes': {
+      type: 'boolean',
+      meaning: 'its expansion is a total derivative as far as it was followed',
+      read: (t) => t.leading === undefined,
+    },
   },
 });
 

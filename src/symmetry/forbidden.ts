@@ -25,7 +25,11 @@ export interface LatticeSymmetries {
  *  generated. Symmetries with a smooth parameter only: staggered shifts do not act on continuum fields. */
 export function forbiddingSymmetry(monomial: JetMonomial, symmetries: LatticeSymmetries): string | null {
   const density = new Density(symmetries.space, new Map([[monomial, Coefficient.one]]));
-  return forbiddingShift(density, symmetries) ?? forbiddingPeriod(density, symmetries) ?? forbiddingMap(density, symmetries);
+  return (
+    forbiddingShift(density, symmetries) ??
+    forbiddingPeriod(density, symmetries) ??
+    forbiddingMap(density, symmetries)
+  );
 }
 
 function forbiddingShift(density: Density, { space, shifts, fields }: LatticeSymmetries): string | undefined {
@@ -39,7 +43,9 @@ function forbiddingShift(density: Density, { space, shifts, fields }: LatticeSym
   )?.family;
   if (!family) return undefined;
   const moved = fields.filter((_, i) => (family.prefactor[i]?.length ?? 0) > 0).map((f) => f.name);
-  return moved.length === 1 ? `the shift ${moved[0]} -> ${moved[0]} + ${family.profile}` : `the shift by ${family.profile}`;
+  return moved.length === 1
+    ? `the shift ${moved[0]} -> ${moved[0]} + ${family.profile}`
+    : `the shift by ${family.profile}`;
 }
 
 /** A polynomial in an undifferentiated angle is not periodic, whatever the action. */
@@ -80,7 +86,11 @@ function simplest(elements: readonly PointElement[], { lattice, fields }: Lattic
   const isTimeOnly = (e: PointElement): boolean =>
     e.matrix.every((row, i) => row[i] === 1 || (i === time && row[i] === -1));
   const kind = (e: PointElement): string =>
-    e.matrix.every((row, i) => row[i] === 1) ? 'the field reflection' : isTimeOnly(e) ? 'the time reflection' : 'the lattice map';
+    e.matrix.every((row, i) => row[i] === 1)
+      ? 'the field reflection'
+      : isTimeOnly(e)
+        ? 'the time reflection'
+        : 'the lattice map';
   const sorted = [...elements].sort((x, y) => describe(x).length - describe(y).length);
   return `${kind(sorted[0]!)} ${describe(sorted[0]!)}`;
 }

@@ -2,8 +2,8 @@
 // only (the automorphisms of the Gram matrix), combined with the reflection of time and with signs and permutations of the
 // fields. An element is a symmetry iff it maps the action to itself up to lattice translations (canonicalAction.ts).
 
-import { canonicalAction, isSameAction, type LatticeMap, mapAction } from '../model/canonicalAction.ts';
 import type { ActionTerm } from '../model/action.ts';
+import { canonicalAction, isSameAction, type LatticeMap, mapAction } from '../model/canonicalAction.ts';
 import { type Field, type Lattice, spaceAxes, timeAxis } from '../model/geometry.ts';
 import { LimitError } from '../notation/source.ts';
 import { crystalClass } from './crystalClass.ts';
@@ -65,7 +65,10 @@ export function analysePointGroup(input: PointGroupInput): PointGroupAnalysis {
     order: spatial.length,
     name: crystalClass(spatial),
     holohedry: spaceParts(candidates, space).length,
-    generators: generators(spatial, space.map((k) => lattice.axes[k]!.name)),
+    generators: generators(
+      spatial,
+      space.map((k) => lattice.axes[k]!.name),
+    ),
     timeReflection: time !== undefined && elements.some((e) => isTrivial(e) && isIdentity(e.matrix, time)),
     fieldReflection: elements.some(
       (e) => isIdentity(e.matrix) && e.fields.every((f, i) => f.field === i && f.sign === -1),
@@ -115,7 +118,9 @@ function fieldActions(fields: readonly Field[]): PointElement['fields'][] {
       ),
     );
     if (actions.length > MOST_FIELD_ACTIONS)
-      throw new LimitError(`${fields.length} fields have more than ${MOST_FIELD_ACTIONS} permutations with signs`);
+      throw new LimitError(
+        `${fields.length} fields have more than ${MOST_FIELD_ACTIONS} permutations with signs`,
+      );
   }
   return actions;
 }
@@ -183,6 +188,7 @@ export function elementText(matrix: Matrix, names: readonly string[]): string {
   };
   const [i, k] = moved as [number, number];
   if (moved.length === 1) return `${names[i]} -> ${image(i)}`;
-  if (moved.length === 2 && image(i) === names[k] && image(k) === names[i]) return `${names[i]} <-> ${names[k]}`;
+  if (moved.length === 2 && image(i) === names[k] && image(k) === names[i])
+    return `${names[i]} <-> ${names[k]}`;
   return `(${moved.map((j) => names[j]).join(', ')}) -> (${moved.map(image).join(', ')})`;
 }

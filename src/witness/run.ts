@@ -55,8 +55,7 @@ function parameterValues(input: RoughInput, size: number): Map<string, number> {
   return values;
 }
 
-const slope = (values: readonly number[]): number =>
-  Math.log2(Math.abs(values.at(-2)! / values.at(-1)!));
+const slope = (values: readonly number[]): number => Math.log2(Math.abs(values.at(-2)! / values.at(-1)!));
 
 function verdictOf(distance: number): WitnessRecord['verdict'] {
   return distance < CONFIRMS ? 'confirms' : distance > CONTRADICTS ? 'contradicts' : 'inconclusive';
@@ -81,7 +80,13 @@ function familyWitness(
     const density = parent.terms.map((t) => compileExpression(t.expression, parameters, profile.field));
     const origin = lattice.axes.map(() => 0);
     const vacuum = density.reduce((s, d) => s + d(origin, () => 0), 0) * size ** space.length;
-    const sum = sliceSum((site, f) => density.reduce((s, d) => s + d(site, f), 0), field, size, lattice.axes.length, space);
+    const sum = sliceSum(
+      (site, f) => density.reduce((s, d) => s + d(site, f), 0),
+      field,
+      size,
+      lattice.axes.length,
+      space,
+    );
     values.push(sum - vacuum);
   }
   const isNothing = values.every((v) => Math.abs(v) < NOTHING);
@@ -116,11 +121,7 @@ function familyWitness(
 }
 
 /** Integral over the unit cell of a product of derivatives of the smooth field. */
-function integral(
-  factors: readonly (readonly number[])[],
-  field: SmoothField,
-  dimension: number,
-): number {
+function integral(factors: readonly (readonly number[])[], field: SmoothField, dimension: number): number {
   const points = QUADRATURE[dimension]!;
   const point = new Array<number>(dimension).fill(0);
   let sum = 0;
@@ -150,7 +151,9 @@ function continuumActions(input: WitnessInput, field: SmoothField, dimension: nu
     const known = cache.get(m);
     if (known !== undefined) return known;
     const factors = jets.factors(m);
-    const isStatic = factors.every((f) => f.field === varied && (time === undefined || f.derivative[time] === 0));
+    const isStatic = factors.every(
+      (f) => f.field === varied && (time === undefined || f.derivative[time] === 0),
+    );
     const value = isStatic
       ? integral(
           factors.map((f) => space.map((k) => f.derivative[k]!)),
@@ -198,7 +201,13 @@ function smoothWitness(input: WitnessInput, dimension: number): WitnessRecord | 
       size,
       space,
     );
-    const sum = sliceSum((site, f) => terms.reduce((s, t) => s + t(site, f), 0), onSites, size, lattice.axes.length, space);
+    const sum = sliceSum(
+      (site, f) => terms.reduce((s, t) => s + t(site, f), 0),
+      onSites,
+      size,
+      lattice.axes.length,
+      space,
+    );
     return sum - actionOf(leading, size);
   });
   const order = correction.total;
@@ -209,7 +218,12 @@ function smoothWitness(input: WitnessInput, dimension: number): WitnessRecord | 
   const predicted = actionOf(correction.terms, 1);
   const relative = Math.abs(limit / predicted - 1);
   const byExponent = verdictOf(Math.abs(fitted - order));
-  const verdict = relative > 0.2 && byExponent === 'confirms' ? 'contradicts' : relative > 0.05 ? 'inconclusive' : byExponent;
+  const verdict =
+    relative > 0.2 && byExponent === 'confirms'
+      ? 'contradicts'
+      : relative > 0.05
+        ? 'inconclusive'
+        : byExponent;
   return {
     kind: 'smooth-limit',
     subject: 'a smooth periodic field',

@@ -39,7 +39,8 @@ export function familySample(
   if (factors.some((f) => f.kind === 'coordinate' || dependsOnTime(f))) return undefined;
   return (site) =>
     profile.terms.reduce(
-      (sum, t) => sum + t.factors.reduce((p, f) => p * factorValue(f, site, size, period), t.weight.toNumber()),
+      (sum, t) =>
+        sum + t.factors.reduce((p, f) => p * factorValue(f, site, size, period), t.weight.toNumber()),
       0,
     );
 }
@@ -67,7 +68,11 @@ function factorValue(f: ProfileFactor, site: readonly number[], size: number, pe
 
 /** A smooth field of period 1 in every direction, with its derivatives: a sum of products of sines. */
 export class SmoothField {
-  private readonly modes: readonly { amplitude: number; waves: readonly number[]; phases: readonly number[] }[];
+  private readonly modes: readonly {
+    amplitude: number;
+    waves: readonly number[];
+    phases: readonly number[];
+  }[];
 
   constructor(dimension: number) {
     const axes = Array.from({ length: dimension }, (_, k) => k);

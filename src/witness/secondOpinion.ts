@@ -49,7 +49,8 @@ export function remainderOpinion(functions: Iterable<FunctionName>, order: numbe
     for (let k = 0; k <= order; k++) series = series.plus(term(k));
     const next = term(order + 1).isZero() ? term(order + 2) : term(order + 1);
     const remainder = value.minus(series);
-    const size = (x: typeof remainder): number => (x.isZero() ? Number.NEGATIVE_INFINITY : x.abs().log(10).toNumber());
+    const size = (x: typeof remainder): number =>
+      x.isZero() ? Number.NEGATIVE_INFINITY : x.abs().log(10).toNumber();
     return {
       name,
       order,

@@ -69,10 +69,10 @@ describe('new, schema and rules', () => {
   test('every rule in the list can be explained', () => {
     const rules = JSON.parse(saltus.run(['rules', '--format', 'json']).stdout);
     expect(rules.length).toBeGreaterThan(0);
-    const explained = saltus.run(['rules', 'explain', rules[0].id]);
+    const explained = saltus.run(['rules', 'explain', rules[0].rule]);
     expect(explained.status).toBe(0);
-    expect(explained.stdout).toContain(rules[0].id);
-    expect(saltus.run(['rules']).stdout).toContain(rules[0].id);
+    expect(explained.stdout).toContain(rules[0].rule);
+    expect(saltus.run(['rules']).stdout).toContain(rules[0].rule);
     expect(saltus.run(['rules', 'facts']).stdout).toContain('family');
   });
 });

@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { readCase } from '../../src/model/caseFile.ts';
 import { caseJsonSchema, STATEMENTS } from '../../src/model/schema.ts';
 import { starterCase } from '../../src/model/starter.ts';
+import { YamlSource } from '../../src/model/yamlSource.ts';
 import { printQuotient } from '../../src/notation/print.ts';
 import { base, edited, errorOf, unmarked } from './marked.ts';
 
@@ -181,6 +182,24 @@ describe('the place of an error inside a string', () => {
   });
 });
 
+describe('every character of a string', () => {
+  it.each([
+    ['in single quotes', "'it''s a ''rotor'' film'"],
+    ['in double quotes', '"a \\"rotor\\" film \\u00e9 \\U0001F600 \\t end"'],
+    ['without quotes', 'a film of rotors'],
+  ])('stands where it was written %s', (_, written) => {
+    const source = YamlSource.read(`title: ${written}\n`, 'x.yaml');
+    const { title } = source.toPlain() as { title: string };
+    for (let offset = 0; offset < title.length; offset++) {
+      if (!/[a-z]/.test(title.charAt(offset))) continue;
+      const { column } = source.positionInString(['title'], offset);
+      expect(`title: ${written}`.charAt(column - 1)).toBe(title.charAt(offset));
+    }
+    const last = source.positionInString(['title'], title.length - 1);
+    expect(`title: ${written}`.slice(last.column - 1).replace(/["']$/, '')).toBe(title.slice(-1));
+  });
+});
+
 describe('a case is read with a warning', () => {
   const block = (value: string): string =>
     edited(`    - {name: x-link, term: ${xLink}}`, `    - name: x-link\n      term: ${value}`);
@@ -197,6 +216,7 @@ describe('a case is read with a warning', () => {
       /"Deltac_x phi" of cos/,
     ],
     ['a weight of an angle is a parameter', block('"J*(1 - sin(¦phi + J*phi))"'), /angle/],
+    ['angles are multiplied inside a cosine', block('"J*(1 - cos(¦phi T_x phi))"'), /angle/],
     ['an angle is squared inside a cosine', block('"J*(1 - cos(¦phi^2))"'), /angle/],
     ['the Lagrangian holds a spacing', edited('K/2 (d_x phi)^2', 'K/2*¦a (d_x phi)^2'), /spacing a/],
     ['the Lagrangian has an aperiodic cosine', edited('K/2 (d_x phi)^2', 'K*cos(¦phi/3)'), /angle/],

@@ -157,6 +157,7 @@ const expressions: readonly Row[] = [
   ['a field with arguments', term('"J*(1 - cos(¦phi(x)))"'), /reads as a function/],
   ['a function of a constant', term('"J*¦exp(1) phi^2"'), /no exact value/],
   ['a division by what vanishes', term('"J/¦phi^2"'), /vanishes/],
+  ['a division by a constant that is a sum', term('"J/(¦J + J0 + phi)"'), /is a sum/],
   ['a logarithm of what vanishes', term('"J*¦log(phi)"'), /expanded/],
   ['an exponential about one', term('"J*¦exp(1 + phi)"'), /expanded/],
   ['a root of an undeclared sign', term('"¦sqrt(J^2)*phi^2"'), /positive/],

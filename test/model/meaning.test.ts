@@ -92,6 +92,12 @@ describe('an expression on the lattice', () => {
     expect(lattice('cos(Delta_x phi)', { background })).toMatchObject({ kind: 'function' });
   });
 
+  it('may divide by a root that does not vanish, but not hide a constant whose value is not worked out', () => {
+    expect(lattice('J/sqrt(1 + (Delta_x phi)^2)')).toMatchObject({ kind: 'product' });
+    expect(lattice('log(sqrt(1 + phi))')).toMatchObject({ name: 'log' });
+    expect(refusal(() => lattice('log(cos(pi/3 + phi))')).problem).toMatch(/not worked out/);
+  });
+
   it('may have angles of 30 and 45 degrees as constants under cos and sin', () => {
     for (const angle of ['pi/6', 'pi/4', '2*pi/3', '-5*pi/4', '7*pi'])
       expect(lattice(`cos(${angle} + phi)`)).toMatchObject({ name: 'cos' });
