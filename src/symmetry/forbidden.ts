@@ -4,7 +4,9 @@
 // finite shift as well.
 
 import { Coefficient } from '../exact/coefficient.ts';
-import { Density, type JetMonomial, type JetSpace } from '../limit/jets.ts';
+import { LaurentPolynomial, type LaurentTerm } from '../exact/laurentPolynomial.ts';
+import { Density, type JetMonomial, type JetSpace, type JetVariable } from '../limit/jets.ts';
+import type { LinearForm } from '../model/action.ts';
 import { type Field, type Lattice, timeAxis } from '../model/geometry.ts';
 import { variationForms } from './brokenShift.ts';
 import { transformDensity } from './continuumElement.ts';
@@ -32,8 +34,11 @@ export function forbiddingSymmetry(monomial: JetMonomial, symmetries: LatticeSym
   );
 }
 
-function forbiddingShift(density: Density, { space, shifts, fields }: LatticeSymmetries): string | undefined {
-  const forms = variationForms(density, space.fields);
+function forbiddingShift(
+  density: Density,
+  { space, shifts, fields }: LatticeSymmetries,
+): string | undefined {
+  const forms = [...variationForms(density, space.fields), ...windingForms(density, fields)];
   const family = shifts.symmetries.find(
     ({ lattice, family: f }) =>
       lattice &&
@@ -46,6 +51,36 @@ function forbiddingShift(density: Density, { space, shifts, fields }: LatticeSym
   return moved.length === 1
     ? `the shift ${moved[0]} -> ${moved[0]} + ${family.profile}`
     : `the shift by ${family.profile}`;
+}
+
+/** For angles the derivative ∂_k φ is a total derivative of something that is not single-valued: it counts windings, and must
+ *  not be left over in the variation. The variation (∂^α λ)(∂^β φ) of a quadratic monomial is, up to derivatives of
+ *  single-valued fields, ± (∂^{α+β−e_k} λ) ∂_k φ for any k in β; these are the forms in front of ∂_k φ. */
+function windingForms(density: Density, fields: readonly Field[]): LinearForm[] {
+  const { space } = density;
+  const dimension = space.axes.length;
+  const sums = new Map<string, { field: string; terms: LaurentTerm[] }>();
+  for (const [monomial, coefficient] of density.terms) {
+    if (monomial.length !== 2) continue;
+    const [x, y] = space.factors(monomial) as [JetVariable, JetVariable];
+    for (const [moved, kept] of [
+      [x, y],
+      [y, x],
+    ] as const) {
+      const k = kept.derivative.findIndex((n) => n > 0);
+      if (k < 0 || fields[kept.field]!.values.kind !== 'angle') continue;
+      const order = kept.derivative.reduce((sum, n) => sum + n, 0);
+      const exponents = moved.derivative.map((n, i) => n + kept.derivative[i]! - (i === k ? 1 : 0));
+      const weight = order % 2 === 1 ? coefficient : coefficient.neg();
+      const key = `${kept.field},${k},${moved.field}`;
+      const sum = sums.get(key) ?? { field: space.fields[moved.field]!, terms: [] };
+      sums.set(key, sum);
+      sum.terms.push({ exponents, weight });
+    }
+  }
+  return [...sums.values()].map(
+    ({ field, terms }) => new Map([[field, LaurentPolynomial.of(dimension, terms)]]),
+  );
 }
 
 /** A polynomial in an undifferentiated angle is not periodic, whatever the action. */

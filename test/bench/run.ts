@@ -33,6 +33,7 @@ const { values: options } = parseArgs({
 });
 const { quick } = options;
 const repeats = quick ? 3 : 9;
+const leastSeconds = quick ? 0.1 : 0.5;
 
 interface Row {
   readonly size: string;
@@ -75,7 +76,7 @@ const compared = (outcome: PeerOutcome, agrees: (result: unknown) => boolean): R
   'skipped' in outcome ? outcome : { ...outcome, agrees: agrees(outcome.result) };
 
 function expansionRow(order: number, peers: Peers | undefined): Row {
-  const { seconds: warm, result } = repeated(expansionCall(order), 2, repeats);
+  const { seconds: warm, result } = repeated(expansionCall(order), repeats, leastSeconds);
   const check = expansionCheck(result);
   const isSlow = (name: SystemName): boolean => name === 'Maxima' && order > 12;
   const outcomes = peers
@@ -108,7 +109,7 @@ function equivalenceRows(d: number, mode: Mode, scratch: string, peers: Peers | 
           )
       : [];
   return (['normal form', 'Euler operator'] as const).map((method): Row => {
-    const { seconds: warm, result } = repeated(() => equivalences(densities, method), 2, repeats);
+    const { seconds: warm, result } = repeated(() => equivalences(densities, method), repeats, leastSeconds);
     return {
       size: `${d} ${mode}, ${method}`,
       cold: coldSeconds(['t2', file, method]),

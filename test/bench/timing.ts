@@ -20,9 +20,15 @@ export function median(values: readonly number[]): number {
   return sorted.length % 2 === 1 ? sorted[half]! : (sorted[half - 1]! + sorted[half]!) / 2;
 }
 
-/** Median seconds of repeated calls after `warmUp` untimed ones, and the last result. */
-export function repeated<T>(work: () => T, warmUp: number, repeats: number): Timed<T> {
-  for (let i = 0; i < warmUp; i++) work();
-  const runs = Array.from({ length: repeats }, () => timed(work));
+/** Median seconds of at least `repeats` calls and at least `leastSeconds` of them, after as long a warm-up that is not
+ *  counted, and the last result. */
+export function repeated<T>(work: () => T, repeats: number, leastSeconds: number): Timed<T> {
+  for (let spent = 0; spent < leastSeconds; ) spent += timed(work).seconds;
+  const runs: Timed<T>[] = [];
+  for (let spent = 0; runs.length < repeats || spent < leastSeconds; ) {
+    const run = timed(work);
+    runs.push(run);
+    spent += run.seconds;
+  }
   return { seconds: median(runs.map((r) => r.seconds)), result: runs.at(-1)!.result };
 }

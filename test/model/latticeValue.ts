@@ -12,8 +12,8 @@ export type Sites = (site: Site) => Rational;
 
 /** A rational function of the sites without any symmetry, one for each field. */
 export function field(name: string): Sites {
-  const seed = name === 'phi' ? 7 : 11;
-  return ([x, y]) => rational(((x * x * seed + 13 * x * y + 5 * y + seed) % 17) + y, 1 + ((x + 40) % 3));
+  const offset = name === 'phi' ? 7 : 11;
+  return ([x, y]) => rational(((x * x * offset + 13 * x * y + 5 * y + offset) % 17) + y, 1 + ((x + 40) % 3));
 }
 
 /** The same function with its values kept, since nested operators ask for each many times. */
