@@ -8,9 +8,11 @@ import { type Matching, matchProposal, proposalDensity, proposeContinuum } from 
 import { isEquivalent, normalForm } from './limit/normalForm.ts';
 import { printDensity } from './limit/printDensity.ts';
 import { quadraticSign } from './limit/quadraticForm.ts';
+import { ExpansionPointError } from './limit/taylor.ts';
 import type { Expression } from './model/action.ts';
 import type { Case, Proposal } from './model/case.ts';
 import { linearForms } from './model/linearForms.ts';
+import { InputError, NotationError, type SourcePosition } from './notation/source.ts';
 import { type CheckReport, isFailure } from './report/findings.ts';
 import { chargeEnergies } from './rough/charges.ts';
 import { analyseConfigurations } from './rough/configurations.ts';
@@ -79,7 +81,8 @@ function explainDifferences(matching: Matching, forbids: (monomial: JetMonomial)
 /** Checks one case against the rules. Throws LimitError where a stated limit is hit. */
 export function checkCase(theCase: Case, rules: readonly Rule[]): CheckReport {
   const { lattice, fields, parent } = theCase;
-  const { expansion, proposal, matching: bare, continuum } = expandAndMatch(theCase);
+  const start = { file: theCase.file, line: 1, column: 1 };
+  const { expansion, proposal, matching: bare, continuum } = at(start, () => expandAndMatch(theCase));
   const { space } = expansion;
   const latticeForms = parent.terms.flatMap((t) => linearForms(t.expression));
   const continuumForms = linearForms(proposal.lagrangian, 'continuum');
@@ -122,11 +125,27 @@ export function checkCase(theCase: Case, rules: readonly Rule[]): CheckReport {
     configurations,
     charges: chargeEnergies(setting),
     witness: runWitnesses({ ...setting, configurations, profiles }),
-    claims: theCase.claims.map((claim) => judgeClaim(claim, evidence)),
+    claims: theCase.claims.map((claim) => at(claim.position, () => judgeClaim(claim, evidence))),
     compactAsReal: isCompactTreatedAsReal(theCase),
     quadraticForm: quadraticSign(continuum, positiveNames(theCase, proposal)),
   };
   return withVerdict({ analyses, findings: applyRules(rules, analyses), verdict: 'holds' });
+}
+
+/** Runs an analysis of something written in the case and gives what is wrong with it its place in the file. */
+function at<T>(position: SourcePosition, analyse: () => T): T {
+  try {
+    return analyse();
+  } catch (error) {
+    if (error instanceof NotationError) throw new InputError(error.problem, error.mend, position);
+    if (error instanceof ExpansionPointError)
+      throw new InputError(
+        error.message,
+        'choose another background, or write the expression about one',
+        position,
+      );
+    throw error;
+  }
 }
 
 /** True when an angle occurs in the parent, but in no periodic function: its period then has no effect. */

@@ -1,10 +1,8 @@
 // Reading case files: from a path, or from standard input for `-`.
 
 import { closeSync, openSync, readSync } from 'node:fs';
-import { InputError, LimitError } from '../notation/source.ts';
-
-/** Largest case file, in bytes; also bounds a device or a pipe that never ends. */
-export const LARGEST_CASE = 1_000_000;
+import { LARGEST_FILE } from '../model/limits.ts';
+import { InputError } from '../notation/source.ts';
 
 const REASONS: Readonly<Record<string, readonly [problem: string, mend: string]>> = {
   ENOENT: ['there is no such file', 'give the path of a case file, or - to read standard input'],
@@ -35,21 +33,24 @@ function readSome(descriptor: number, into: Uint8Array, offset: number): number 
 }
 
 function readBounded(descriptor: number, file: string): Uint8Array {
-  const buffer = new Uint8Array(LARGEST_CASE + 1);
+  const buffer = new Uint8Array(LARGEST_FILE + 1);
   let length = 0;
   for (;;) {
     const read = readSome(descriptor, buffer, length);
     if (read === 0) return buffer.slice(0, length);
     length += read;
-    if (length > LARGEST_CASE)
-      throw new LimitError(
-        `${file} is larger than ${LARGEST_CASE / 1_000_000} MB, the largest case file that is read; leave out what is not part of the case`,
+    // This also ends the reading of a device or a pipe that never ends.
+    if (length > LARGEST_FILE)
+      throw new InputError(
+        `the file has more than the ${LARGEST_FILE} bytes that are read`,
+        'split it into several cases',
+        { file, line: 1, column: 1 },
       );
   }
 }
 
 /** The bytes of a case file, or of standard input for `-`.
- *  Throws InputError at line 1, column 1 when it cannot be read and LimitError when it is larger than LARGEST_CASE. */
+ *  Throws InputError at line 1, column 1 when it cannot be read or is larger than LARGEST_FILE. */
 export function readInput(file: string): Uint8Array {
   let descriptor: number | undefined;
   try {

@@ -8,9 +8,11 @@ import { Rational, rational } from '../exact/rational.ts';
 import type { ActionTerm, Expression, LinearForm } from '../model/action.ts';
 import type { Case } from '../model/case.ts';
 import type { Lattice } from '../model/geometry.ts';
+import { InputError } from '../notation/source.ts';
 import { addTerm, Density, type JetMonomial, JetSpace } from './jets.ts';
 import { normalForm } from './normalForm.ts';
 import { composeDensity, type FormSeries, type Truncation } from './series.ts';
+import { ExpansionPointError } from './taylor.ts';
 
 /** Powers of each spacing beyond the leading order, e.g. {a: 2, b: 0}. */
 export type MultiOrder = ReadonlyMap<string, number>;
@@ -351,7 +353,7 @@ function baseOrder(
 
 /** Expansion of the parent action as a Lagrangian density (sum over cells → ∫ / cell volume).
  *  @param isLeading says whether a monomial belongs to the proposal; by default every term counts from its own leading
- *  order. Throws LimitError (blocks, terms) and ExpansionPointError. */
+ *  order. Throws LimitError (blocks, terms), and InputError for a term without an expansion. */
 export function expandAction(
   theCase: Case,
   isLeading: (space: JetSpace) => (m: JetMonomial) => boolean = () => () => true,
@@ -360,7 +362,7 @@ export function expandAction(
   const space = jetSpaceOf(theCase);
   const fieldCut = fieldCutOf(theCase);
   const fields = fieldCut ?? Number.POSITIVE_INFINITY;
-  const terms = theCase.parent.terms.map((t) => expandTerm(t, space, theCase, fields));
+  const terms = theCase.parent.terms.map((t) => atTerm(t, () => expandTerm(t, space, theCase, fields)));
   const inProposal = isLeading(space);
   const accepted = (t: ExpandedTerm): boolean => t.leading?.monomials.some(inProposal) ?? false;
   const byTerm = terms.map(
@@ -374,6 +376,20 @@ export function expandAction(
   );
   const through = theCase.expand.beyondLeading;
   return { space, orders: collectOrders(byTerm, space, lattice, through), byTerm, through, fieldCut };
+}
+
+/** Gives a term that cannot be expanded its place in the case file. */
+function atTerm<T>(term: ActionTerm, expand: () => T): T {
+  try {
+    return expand();
+  } catch (error) {
+    if (!(error instanceof ExpansionPointError) || !term.position) throw error;
+    throw new InputError(
+      `the term "${term.name}" has no expansion: ${error.message}`,
+      'write the function about a point where it is analytic, or declare a background',
+      term.position,
+    );
+  }
 }
 
 /** Jets of the fields of a case over its axes. */

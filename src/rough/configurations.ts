@@ -6,6 +6,9 @@ import type { Expansion } from '../limit/expansion.ts';
 import { Density } from '../limit/jets.ts';
 import type { Matching } from '../limit/matching.ts';
 import type { Case } from '../model/case.ts';
+import type { Claim } from '../model/claim.ts';
+import type { Lattice } from '../model/geometry.ts';
+import { InputError, NotationError } from '../notation/source.ts';
 import type { ShiftAnalysis } from '../symmetry/family.ts';
 import type { PointGroupAnalysis } from '../symmetry/pointGroup.ts';
 import { defaultFamilies } from './families.ts';
@@ -41,7 +44,7 @@ export interface ConfigurationAnalysis {
   readonly profiles: ReadonlyMap<string, FamilyProfile>;
 }
 
-/** Throws NotationError for a claimed profile that is none. */
+/** Throws InputError for a claimed profile that is none. */
 export function analyseConfigurations(input: RoughInput): ConfigurationAnalysis {
   const { lattice, claims } = input.case;
   const setting = new ScalingSetting(lattice, input.matching.scaling);
@@ -59,13 +62,21 @@ export function analyseConfigurations(input: RoughInput): ConfigurationAnalysis 
   };
   for (const claim of claims)
     if (claim.kind === 'configuration') {
-      const profile = readFamilyProfile(claim.profile.text, claim.profile.tree, lattice, claim.field);
-      byClaim.set(claim.id, examine(profile, true));
+      byClaim.set(claim.id, examine(claimedProfile(claim, lattice), true));
     }
   for (const { name } of input.case.fields)
     for (const profile of defaultFamilies(lattice, name, input.shifts, input.pointGroup))
       examine(profile, false);
   return { configurations: [...all.values()], byClaim, profiles };
+}
+
+function claimedProfile(claim: Extract<Claim, { kind: 'configuration' }>, lattice: Lattice): FamilyProfile {
+  try {
+    return readFamilyProfile(claim.profile.text, claim.profile.tree, lattice, claim.field);
+  } catch (error) {
+    if (error instanceof NotationError) throw new InputError(error.problem, error.mend, claim.position);
+    throw error;
+  }
 }
 
 function examineFamily(

@@ -1,16 +1,18 @@
 // Which exact symmetry of the lattice forbids a monomial of a continuum Lagrangian. A point element forbids it when it maps it
 // to minus itself up to a total derivative, the whole group when the average over the group (Reynolds operator) is a total
-// derivative, a continuous shift when the first variation is none: being so for every field, the first order decides the
-// finite shift as well.
+// derivative, a continuous shift when the first variation is none. A shift by a polynomial does not decay, so it must also
+// leave no extensive constant, the monomial on the shift itself: an exact symmetry of the lattice is one of the effective action
+// with its constant.
 
 import { Coefficient } from '../exact/coefficient.ts';
 import { LaurentPolynomial, type LaurentTerm } from '../exact/laurentPolynomial.ts';
+import { type Rational, rational } from '../exact/rational.ts';
 import { Density, type JetMonomial, type JetSpace, type JetVariable } from '../limit/jets.ts';
 import type { LinearForm } from '../model/action.ts';
 import { type Field, type Lattice, timeAxis } from '../model/geometry.ts';
 import { variationForms } from './brokenShift.ts';
 import { transformDensity } from './continuumElement.ts';
-import type { ShiftAnalysis } from './family.ts';
+import type { CoordinatePolynomial, ShiftAnalysis, ShiftFamily } from './family.ts';
 import { elementText, type PointElement, type PointGroupAnalysis } from './pointGroup.ts';
 import { testShiftFamily } from './shiftTest.ts';
 
@@ -34,23 +36,46 @@ export function forbiddingSymmetry(monomial: JetMonomial, symmetries: LatticeSym
   );
 }
 
-function forbiddingShift(
-  density: Density,
-  { space, shifts, fields }: LatticeSymmetries,
-): string | undefined {
+function forbiddingShift(density: Density, { space, shifts, fields }: LatticeSymmetries): string | undefined {
   const forms = [...variationForms(density, space.fields), ...windingForms(density, fields)];
   const family = shifts.symmetries.find(
     ({ lattice, family: f }) =>
       lattice &&
       f.discrete === undefined &&
       f.phase.every((p) => p.isZero) &&
-      !testShiftFamily(f, forms, 'continuum'),
+      (!testShiftFamily(f, forms, 'continuum') || leavesConstant(density, f)),
   )?.family;
   if (!family) return undefined;
   const moved = fields.filter((_, i) => (family.prefactor[i]?.length ?? 0) > 0).map((f) => f.name);
   return moved.length === 1
     ? `the shift ${moved[0]} -> ${moved[0]} + ${family.profile}`
     : `the shift by ${family.profile}`;
+}
+
+/** True when a shift by a polynomial leaves a field-independent term: Π ∂^α λ does not vanish identically. */
+function leavesConstant(density: Density, { free, prefactor }: ShiftFamily): boolean {
+  if (free.length > 0) return false;
+  const sum = [...density.terms].reduce((total, [monomial, coefficient]) => {
+    const value = density.space
+      .factors(monomial)
+      .reduce(
+        (product, f) => product.mul(derivativeAt(prefactor[f.field] ?? [], f.derivative)),
+        Coefficient.one,
+      );
+    return total.add(coefficient.mul(value));
+  }, Coefficient.zero);
+  return !sum.isZero;
+}
+
+/** ∂^α of a polynomial, with its coordinates kept as generators. */
+function derivativeAt(polynomial: CoordinatePolynomial, alpha: readonly number[]): Coefficient {
+  return polynomial.reduce((sum, { exponents, weight }) => {
+    let factor = 1;
+    for (const [k, n] of alpha.entries()) for (let i = 0; i < n; i++) factor *= exponents[k]! - i;
+    if (factor === 0) return sum;
+    const powers = exponents.map((e, k): [string, Rational] => [`coordinate ${k}`, rational(e - alpha[k]!)]);
+    return sum.add(weight.mul(Coefficient.monomial(rational(factor), powers)));
+  }, Coefficient.zero);
 }
 
 /** For angles the derivative ∂_k φ is a total derivative of something that is not single-valued: it counts windings, and must

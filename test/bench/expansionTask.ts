@@ -10,7 +10,7 @@ const action = {
   plaquette: oneMinusCos('beta', on(forward(1).mul(forward(2)))),
 };
 
-/** The expansion through the relative order, from nothing: no table of an earlier call is used. */
+/** The expansion through the relative order, in a jet space of its own: no block or series of an earlier call is used. */
 export const ringExchangeExpansion = (order: number): Expansion =>
   expandAction(handMadeCase(action, { expand: { beyondLeading: order } }));
 

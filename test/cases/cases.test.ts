@@ -88,7 +88,11 @@ const mistakes: Record<string, Mistake> = {
   },
   'two-foliated-rotors-wrong-shift': { claims: ['film-by-film'], says: /absent/ },
   'dipole-chain-wrong-exponent': { claims: ['jump'], says: /a\^-3/ },
-  'dipole-chain-wrong-gradient': { differences: ['only-in-proposal (d_x phi)^2'], says: /\bx\b/ },
+  'dipole-chain-wrong-gradient': {
+    differences: ['only-in-proposal (d_x phi)^2'],
+    faults: ['proposal-term-forbidden'],
+    says: /the shift phi -> phi \+ x/,
+  },
   'laplacian-sheet-wrong-missing-term': {
     differences: ['missing-from-proposal (d_x d_y phi)^2'],
     faults: ['missing-leading-term'],

@@ -21,10 +21,13 @@ describe('the holohedry of orthogonal lattices', () => {
     [['x', 'y'], { y: 'c' }, 4],
     [['x', 'y', 'z'], {}, 48],
     [['x', 'y', 'z', 'w'], {}, 384],
-  ] as const)('over %j with own spacings %j has order %i, and nearest-neighbour links have it all', (axes, spacings, order) => {
-    const group = groupOf({ axes, spacings, time: false, parameters: ['J'], action: neighbours(axes) });
-    expect([group.holohedry, group.order]).toEqual([order, order]);
-  });
+  ] as const)(
+    'over %j with own spacings %j has order %i, and nearest-neighbour links have it all',
+    (axes, spacings, order) => {
+      const group = groupOf({ axes, spacings, time: false, parameters: ['J'], action: neighbours(axes) });
+      expect([group.holohedry, group.order]).toEqual([order, order]);
+    },
+  );
 });
 
 describe('the point group of an action', () => {
@@ -72,7 +75,11 @@ describe('the point group of an action', () => {
     });
     // x → −x maps sin(Δφ) to −sin(Δφ); with φ → −φ it is a symmetry again, and the space part counts it.
     expect([odd.order, odd.fieldReflection]).toEqual([2, false]);
-    const cubic = groupOf({ values: 'real', parameters: ['g'], action: { cube: 'g*phi^3', link: 'g*(Delta_x phi)^2' } });
+    const cubic = groupOf({
+      values: 'real',
+      parameters: ['g'],
+      action: { cube: 'g*phi^3', link: 'g*(Delta_x phi)^2' },
+    });
     expect(cubic.fieldReflection).toBe(false);
   });
 
@@ -94,12 +101,17 @@ describe('the point group of an action', () => {
 
 describe('the canonical action', () => {
   const canonical = (term: string, values: 'angle' | 'real' = 'angle') =>
-    canonicalAction(inlineCase({ time: false, values, parameters: ['J', 'g'], action: { term } }).parent.terms[0]!.expression);
+    canonicalAction(
+      inlineCase({ time: false, values, parameters: ['J', 'g'], action: { term } }).parent.terms[0]!
+        .expression,
+    );
   const same = (x: string, y: string, values: 'angle' | 'real' = 'angle'): boolean =>
     isSameAction(canonical(x, values), canonical(y, values));
 
   it('knows trigonometric, exponential and polynomial identities and translations', () => {
-    expect(same('J*cos(Delta_x phi)*cos(Delta_y phi)', 'J/2*cos((T_x + T_y - 2) phi) + J/2*cos((T_x - T_y) phi)')).toBe(true);
+    expect(
+      same('J*cos(Delta_x phi)*cos(Delta_y phi)', 'J/2*cos((T_x + T_y - 2) phi) + J/2*cos((T_x - T_y) phi)'),
+    ).toBe(true);
     expect(same('J*sin(Delta_x phi)^2', 'J/2 - J/2*cos(2 Delta_x phi)')).toBe(true);
     expect(same('J*cos(Delta_x phi)', 'J*cos(Deltab_x phi)')).toBe(true);
     expect(same('J*cos(Delta_x phi)', 'J*cos(-Delta_x T_y^3 phi)')).toBe(true);
@@ -126,10 +138,17 @@ describe('the canonical action', () => {
 });
 
 type Matrix = number[][];
-const times = (x: Matrix, y: Matrix): Matrix => x.map((r) => r.map((_, k) => r.reduce((s, m, j) => s + m * y[j]![k]!, 0)));
+const times = (x: Matrix, y: Matrix): Matrix =>
+  x.map((r) => r.map((_, k) => r.reduce((s, m, j) => s + m * y[j]![k]!, 0)));
 function generate(generators: readonly Matrix[]): Matrix[] {
   const found = new Map<string, Matrix>();
-  const queue: Matrix[] = [[[1, 0, 0], [0, 1, 0], [0, 0, 1]]];
+  const queue: Matrix[] = [
+    [
+      [1, 0, 0],
+      [0, 1, 0],
+      [0, 0, 1],
+    ],
+  ];
   for (let m = queue.pop(); m; m = queue.pop()) {
     const key = JSON.stringify(m.map((r) => r.map((x) => x + 0)));
     if (found.has(key)) continue;
@@ -141,26 +160,88 @@ function generate(generators: readonly Matrix[]): Matrix[] {
 const minus = (m: Matrix): Matrix => m.map((r) => r.map((x) => -x));
 
 describe('crystal class names', () => {
-  const inversion: Matrix = [[-1, 0, 0], [0, -1, 0], [0, 0, -1]];
-  const twoZ: Matrix = [[-1, 0, 0], [0, -1, 0], [0, 0, 1]];
-  const twoX: Matrix = [[1, 0, 0], [0, -1, 0], [0, 0, -1]];
-  const four: Matrix = [[0, -1, 0], [1, 0, 0], [0, 0, 1]];
-  const threeCube: Matrix = [[0, 0, 1], [1, 0, 0], [0, 1, 0]];
-  const twoXY: Matrix = [[0, 1, 0], [1, 0, 0], [0, 0, -1]];
-  const three: Matrix = [[0, -1, 0], [1, -1, 0], [0, 0, 1]];
-  const six = times(three, times(three, minus(minus([[-1, 0, 0], [0, -1, 0], [0, 0, 1]]))));
+  const inversion: Matrix = [
+    [-1, 0, 0],
+    [0, -1, 0],
+    [0, 0, -1],
+  ];
+  const twoZ: Matrix = [
+    [-1, 0, 0],
+    [0, -1, 0],
+    [0, 0, 1],
+  ];
+  const twoX: Matrix = [
+    [1, 0, 0],
+    [0, -1, 0],
+    [0, 0, -1],
+  ];
+  const four: Matrix = [
+    [0, -1, 0],
+    [1, 0, 0],
+    [0, 0, 1],
+  ];
+  const threeCube: Matrix = [
+    [0, 0, 1],
+    [1, 0, 0],
+    [0, 1, 0],
+  ];
+  const twoXY: Matrix = [
+    [0, 1, 0],
+    [1, 0, 0],
+    [0, 0, -1],
+  ];
+  const three: Matrix = [
+    [0, -1, 0],
+    [1, -1, 0],
+    [0, 0, 1],
+  ];
+  const six = times(
+    three,
+    times(
+      three,
+      minus(
+        minus([
+          [-1, 0, 0],
+          [0, -1, 0],
+          [0, 0, 1],
+        ]),
+      ),
+    ),
+  );
   // Orders of the 32 classes: International Tables for Crystallography vol. A.
   it.each([
-    ['1', [], 1], ['-1', [inversion], 2], ['2', [twoZ], 2], ['m', [minus(twoZ)], 2], ['2/m', [twoZ, inversion], 4],
-    ['222', [twoZ, twoX], 4], ['mm2', [twoZ, minus(twoX)], 4], ['mmm', [twoZ, twoX, inversion], 8],
-    ['4', [four], 4], ['-4', [minus(four)], 4], ['4/m', [four, inversion], 8], ['422', [four, twoX], 8],
-    ['4mm', [four, minus(twoX)], 8], ['-42m', [minus(four), twoX], 8], ['4/mmm', [four, twoX, inversion], 16],
-    ['3', [three], 3], ['-3', [three, inversion], 6], ['32', [three, twoXY], 6], ['3m', [three, minus(twoXY)], 6],
-    ['-3m', [three, twoXY, inversion], 12], ['6', [six], 6], ['-6', [three, minus(twoZ)], 6],
-    ['6/m', [six, inversion], 12], ['622', [six, twoXY], 12], ['6mm', [six, minus(twoXY)], 12],
-    ['-6m2', [three, minus(twoZ), twoXY], 12], ['6/mmm', [six, twoXY, inversion], 24],
-    ['23', [twoZ, threeCube], 12], ['m-3', [twoZ, threeCube, inversion], 24], ['432', [four, threeCube], 24],
-    ['-43m', [minus(four), threeCube], 24], ['m-3m', [four, threeCube, inversion], 48],
+    ['1', [], 1],
+    ['-1', [inversion], 2],
+    ['2', [twoZ], 2],
+    ['m', [minus(twoZ)], 2],
+    ['2/m', [twoZ, inversion], 4],
+    ['222', [twoZ, twoX], 4],
+    ['mm2', [twoZ, minus(twoX)], 4],
+    ['mmm', [twoZ, twoX, inversion], 8],
+    ['4', [four], 4],
+    ['-4', [minus(four)], 4],
+    ['4/m', [four, inversion], 8],
+    ['422', [four, twoX], 8],
+    ['4mm', [four, minus(twoX)], 8],
+    ['-42m', [minus(four), twoX], 8],
+    ['4/mmm', [four, twoX, inversion], 16],
+    ['3', [three], 3],
+    ['-3', [three, inversion], 6],
+    ['32', [three, twoXY], 6],
+    ['3m', [three, minus(twoXY)], 6],
+    ['-3m', [three, twoXY, inversion], 12],
+    ['6', [six], 6],
+    ['-6', [three, minus(twoZ)], 6],
+    ['6/m', [six, inversion], 12],
+    ['622', [six, twoXY], 12],
+    ['6mm', [six, minus(twoXY)], 12],
+    ['-6m2', [three, minus(twoZ), twoXY], 12],
+    ['6/mmm', [six, twoXY, inversion], 24],
+    ['23', [twoZ, threeCube], 12],
+    ['m-3', [twoZ, threeCube, inversion], 24],
+    ['432', [four, threeCube], 24],
+    ['-43m', [minus(four), threeCube], 24],
+    ['m-3m', [four, threeCube, inversion], 48],
   ] as [string, Matrix[], number][])('%s is recognised from its %j…', (name, generators, order) => {
     const group = generate(generators);
     expect([crystalClass(group), group.length]).toEqual([name, order]);
