@@ -32,7 +32,7 @@ interface Comparison {
   readonly expansion: Expansion;
   readonly proposal: Proposal;
   readonly matching: Matching;
-  /** Normal form of the proposal in its own parameters. */
+  /** The proposal in its own parameters, as written. */
   readonly continuum: Density;
 }
 
@@ -41,7 +41,8 @@ function expandAndMatch(theCase: Case): Comparison {
     let continuum: Density | undefined;
     const expansion = expandAction(theCase, (space) => {
       continuum = proposalDensity(theCase, space)!;
-      return (m) => continuum!.terms.has(m);
+      const { terms } = normalForm(continuum);
+      return (m) => terms.has(m);
     });
     const matching = matchProposal(theCase, expansion, theCase.proposal);
     return { expansion, proposal: theCase.proposal, matching, continuum: continuum! };
@@ -50,7 +51,8 @@ function expandAndMatch(theCase: Case): Comparison {
   const proposal = proposeContinuum(theCase, expansion);
   const proposed = { ...theCase, proposal };
   const matching: Matching = { ...matchProposal(proposed, expansion, proposal), origin: 'proposed' };
-  return { expansion, proposal, matching, continuum: proposalDensity(proposed, expansion.space)! };
+  const continuum = proposalDensity(proposed, expansion.space)!;
+  return { expansion, proposal, matching, continuum };
 }
 
 /** Monomials of all orders beyond the leading one, lowest first. */
@@ -127,7 +129,7 @@ export function checkCase(theCase: Case, rules: readonly Rule[]): CheckReport {
     witness: runWitnesses({ ...setting, configurations, profiles }),
     claims: theCase.claims.map((claim) => at(claim.position, () => judgeClaim(claim, evidence))),
     compactAsReal: isCompactTreatedAsReal(theCase),
-    quadraticForm: quadraticSign(continuum, positiveNames(theCase, proposal)),
+    quadraticForm: quadraticSign(normalForm(continuum), positiveNames(theCase, proposal)),
   };
   return withVerdict({ analyses, findings: applyRules(rules, analyses), verdict: 'holds' });
 }

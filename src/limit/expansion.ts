@@ -375,7 +375,8 @@ export function expandAction(
     }),
   );
   const through = theCase.expand.beyondLeading;
-  return { space, orders: collectOrders(byTerm, space, lattice, through), byTerm, through, fieldCut };
+  const normal = byTerm.map((t) => ({ name: t.name, density: t.normal, base: t.base }));
+  return { space, orders: collectOrders(normal, space, lattice, through), byTerm, through, fieldCut };
 }
 
 /** Gives a term that cannot be expanded its place in the case file. */
@@ -430,15 +431,22 @@ function withSpacings(density: Density, lattice: Lattice): Density {
   return new Density(density.space, out);
 }
 
+/** The orders of the expansion as they come out of the Taylor series, before total derivatives are dropped: for fields that do not
+ *  decay, on which those derivatives may count. */
+export function rawOrders(expansion: Expansion, lattice: Lattice): ExpansionOrder[] {
+  const raw = expansion.byTerm.map((t) => ({ name: t.name, density: t.raw, base: t.base }));
+  return collectOrders(raw, expansion.space, lattice, expansion.through);
+}
+
 function collectOrders(
-  byTerm: readonly TermExpansion[],
+  byTerm: readonly { readonly name: string; readonly density: Density; readonly base: MultiOrder }[],
   space: JetSpace,
   lattice: Lattice,
   through: number,
 ): ExpansionOrder[] {
   const groups = new Map<string, { order: Map<string, number>; terms: Map<JetMonomial, ExpansionTerm> }>();
-  for (const { name, normal, base } of byTerm)
-    for (const [monomial, coefficient] of normal.terms)
+  for (const { name, density, base } of byTerm)
+    for (const [monomial, coefficient] of density.terms)
       for (const part of coefficient.terms) {
         const order = new Map([...spacingOrder(part, lattice)].map(([s, n]) => [s, n - base.get(s)!]));
         if (totalOf(order) > through) continue;

@@ -45,14 +45,14 @@ export interface Matching {
 /** Orders kept in a proposal beyond those asked for, so that a term of too high an order is still seen. */
 const PROPOSAL_ORDERS = 12;
 
-/** Normal form of the proposal's Lagrangian in its own parameters; undefined without a proposal. */
+/** The proposal's Lagrangian as a density in its own parameters, not in normal form; undefined without a proposal. */
 export function proposalDensity(theCase: Case, space: JetSpace): Density | undefined {
   if (!theCase.proposal) return undefined;
   const cut = {
     order: theCase.expand.beyondLeading + PROPOSAL_ORDERS,
     fields: fieldCutOf(theCase) ?? Number.POSITIVE_INFINITY,
   };
-  return normalForm(continuumDensity(theCase.proposal.lagrangian, space, cut, theCase.expand.background));
+  return continuumDensity(theCase.proposal.lagrangian, space, cut, theCase.expand.background);
 }
 
 /** Entry of the expansion at one monomial. */
@@ -84,7 +84,7 @@ function nominalOrder(theCase: Case, expansion: Expansion, monomial: JetMonomial
 /** Solves or checks the proposal's parameters and classifies every monomial of leading order and of the orders that the
  *  proposal itself includes. `forbiddenBy` is filled in once the symmetries are known (see explainDifferences). */
 export function matchProposal(theCase: Case, expansion: Expansion, proposal: Proposal): Matching {
-  const density = proposalDensity({ ...theCase, proposal }, expansion.space)!;
+  const density = normalForm(proposalDensity({ ...theCase, proposal }, expansion.space)!);
   const parent = parentEntries(expansion);
   const lowest = (m: JetMonomial): number => parent.get(m)?.[0]?.order ?? nominalOrder(theCase, expansion, m);
   const judged = [...density.terms.keys()].filter((m) => lowest(m) <= expansion.through);

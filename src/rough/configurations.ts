@@ -2,8 +2,8 @@
 // an expansion on it at all.
 
 import type { Rational } from '../exact/rational.ts';
-import type { Expansion } from '../limit/expansion.ts';
-import { Density } from '../limit/jets.ts';
+import { type Expansion, type ExpansionOrder, rawOrders } from '../limit/expansion.ts';
+import { Density, type JetSpace } from '../limit/jets.ts';
 import type { Matching } from '../limit/matching.ts';
 import type { Case } from '../model/case.ts';
 import type { Claim } from '../model/claim.ts';
@@ -29,7 +29,7 @@ export interface RoughInput {
   readonly case: Case;
   readonly expansion: Expansion;
   readonly matching: Matching;
-  /** The proposal in its own parameters. */
+  /** The proposal in its own parameters, as written: total derivatives are kept, since a family need not decay. */
   readonly proposalDensity: Density;
   readonly shifts: ShiftAnalysis;
   readonly pointGroup: PointGroupAnalysis;
@@ -48,6 +48,7 @@ export interface ConfigurationAnalysis {
 export function analyseConfigurations(input: RoughInput): ConfigurationAnalysis {
   const { lattice, claims } = input.case;
   const setting = new ScalingSetting(lattice, input.matching.scaling);
+  const orders = rawOrders(input.expansion, lattice);
   const byClaim = new Map<string, Configuration>();
   const all = new Map<string, Configuration>();
   const profiles = new Map<string, FamilyProfile>();
@@ -55,7 +56,7 @@ export function analyseConfigurations(input: RoughInput): ConfigurationAnalysis 
     const name = input.case.fields.length === 1 ? profile.text : `${profile.field}: ${profile.text}`;
     const known = all.get(name);
     if (known) return known;
-    const configuration = { ...examineFamily(profile, claimed, input, setting), profile: name };
+    const configuration = { ...examineFamily(profile, claimed, input, setting, orders), profile: name };
     all.set(name, configuration);
     profiles.set(name, profile);
     return configuration;
@@ -84,12 +85,13 @@ function examineFamily(
   claimed: boolean,
   input: RoughInput,
   setting: ScalingSetting,
+  orders: readonly ExpansionOrder[],
 ): Configuration {
   const { parent, lattice } = input.case;
   const byTerm = new Map(parent.terms.map((t) => [t.name, latticeScaling(t.expression, profile, setting)]));
   const onLattice = mostSingular(byTerm.values());
   const inContinuum = densityScaling(input.proposalDensity, profile, setting);
-  const corrections = correctionScalings(input.expansion, profile, setting);
+  const corrections = correctionScalings(orders, input.expansion.space, profile, setting);
   const isDivergent = (s: FullScaling | undefined): boolean => s !== undefined && s.a.sign < 0;
   return {
     profile: profile.text,
@@ -124,7 +126,8 @@ interface Corrections {
 /** Every order of the expansion that is left when the time spacing has gone to zero. The series truncates iff the orders after
  *  the first that does not vanish are all less singular than it. */
 function correctionScalings(
-  { orders, space }: Expansion,
+  orders: readonly ExpansionOrder[],
+  space: JetSpace,
   profile: FamilyProfile,
   setting: ScalingSetting,
 ): Corrections {

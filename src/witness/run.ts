@@ -219,11 +219,13 @@ function smoothWitness(input: WitnessInput, dimension: number): WitnessRecord | 
   const relative = Math.abs(limit / predicted - 1);
   const byExponent = verdictOf(Math.abs(fitted - order));
   const verdict =
-    relative > 0.2 && byExponent === 'confirms'
-      ? 'contradicts'
-      : relative > 0.05
-        ? 'inconclusive'
-        : byExponent;
+    byExponent !== 'confirms'
+      ? byExponent
+      : relative > 0.2
+        ? 'contradicts'
+        : relative > 0.05
+          ? 'inconclusive'
+          : 'confirms';
   return {
     kind: 'smooth-limit',
     subject: 'a smooth periodic field',

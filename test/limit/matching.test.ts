@@ -4,6 +4,7 @@ import { Quotient } from '../../src/exact/quotient.ts';
 import { rational } from '../../src/exact/rational.ts';
 import { expandAction } from '../../src/limit/expansion.ts';
 import { type Matching, matchProposal, proposalDensity, proposeContinuum } from '../../src/limit/matching.ts';
+import { normalForm } from '../../src/limit/normalForm.ts';
 import { printMonomial } from '../../src/limit/printDensity.ts';
 import type { Expression } from '../../src/model/action.ts';
 import type { Case, Proposal } from '../../src/model/case.ts';
@@ -38,7 +39,7 @@ const proposal = (parameters: string[], lagrangian: Expression, more: Partial<Pr
 function match(theCase: Case): { matching: Matching; kinds: string[]; values: Record<string, string> } {
   const inProposal = new Set<string>();
   const expansion = expandAction(theCase, (space) => {
-    for (const m of proposalDensity(theCase, space)!.terms.keys()) inProposal.add(m);
+    for (const m of normalForm(proposalDensity(theCase, space)!).terms.keys()) inProposal.add(m);
     return (m) => inProposal.has(m);
   });
   const matching = matchProposal(theCase, expansion, theCase.proposal!);
