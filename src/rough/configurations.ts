@@ -1,35 +1,36 @@
-// Rough configurations: what each family costs on the lattice and in the continuum, and whether the series in the spacing is
-// an expansion on it at all.
+// Rough configurations: what each family costs on the lattice and in the continuum, and whether the series in the spacing
+// is an expansion on it at all.
 
-import type { Rational } from '../exact/rational.ts';
-import { type Expansion, type ExpansionOrder, rawOrders } from '../limit/expansion.ts';
-import { Density, type JetSpace } from '../limit/jets.ts';
+import { Coefficient } from '../exact/coefficient.ts';
+import { type Expansion, spacingOrder } from '../limit/expansion.ts';
+import { addTerm, Density, type JetMonomial } from '../limit/jets.ts';
 import type { Matching } from '../limit/matching.ts';
+import { ExpansionPointError } from '../limit/taylor.ts';
 import type { Case } from '../model/case.ts';
 import type { Claim } from '../model/claim.ts';
-import type { Lattice } from '../model/geometry.ts';
-import { InputError, NotationError } from '../notation/source.ts';
+import { InputError, LimitError, NotationError } from '../notation/source.ts';
 import type { ShiftAnalysis } from '../symmetry/family.ts';
 import type { PointGroupAnalysis } from '../symmetry/pointGroup.ts';
+import { ContinuumFamily } from './continuumScaling.ts';
 import { defaultFamilies } from './families.ts';
-import { type FamilyProfile, readFamilyProfile } from './familyProfile.ts';
+import { latticeScaling } from './latticeScaling.ts';
 import { mixedActionText } from './mixedAction.ts';
-import type { Configuration, CorrectionScaling } from './profile.ts';
 import {
-  asScaling,
-  densityScaling,
-  type FullScaling,
-  latticeScaling,
-  mostSingular,
-  ScalingSetting,
-} from './scaling.ts';
+  type Configuration,
+  type CorrectionScaling,
+  isLocal,
+  type Profile,
+  type Scaling,
+} from './profile.ts';
+import { readConfiguration } from './readConfiguration.ts';
+import { compareSingularity, diverges, mostSingular } from './scaling.ts';
 
 /** What the analysis of rough configurations reads. */
 export interface RoughInput {
   readonly case: Case;
   readonly expansion: Expansion;
   readonly matching: Matching;
-  /** The proposal in its own parameters, as written: total derivatives are kept, since a family need not decay. */
+  /** Normal form of the proposal in its own parameters; used where the case has no Lagrangian of its own. */
   readonly proposalDensity: Density;
   readonly shifts: ShiftAnalysis;
   readonly pointGroup: PointGroupAnalysis;
@@ -41,120 +42,144 @@ export interface ConfigurationAnalysis {
   /** The configuration of each configuration claim, by claim id. */
   readonly byClaim: ReadonlyMap<string, Configuration>;
   /** The families themselves, by their text. */
-  readonly profiles: ReadonlyMap<string, FamilyProfile>;
+  readonly profiles: ReadonlyMap<string, Profile>;
 }
 
-/** Throws InputError for a claimed profile that is none. */
+/** Examines every claimed and every default family. Throws InputError for a claimed profile that is none. */
 export function analyseConfigurations(input: RoughInput): ConfigurationAnalysis {
-  const { lattice, claims } = input.case;
-  const setting = new ScalingSetting(lattice, input.matching.scaling);
-  const orders = rawOrders(input.expansion, lattice);
+  const { lattice, claims, fields } = input.case;
+  const orders = rawOrders(input.expansion, input.case);
   const byClaim = new Map<string, Configuration>();
   const all = new Map<string, Configuration>();
-  const profiles = new Map<string, FamilyProfile>();
-  const examine = (profile: FamilyProfile, claimed: boolean): Configuration => {
-    const name = input.case.fields.length === 1 ? profile.text : `${profile.field}: ${profile.text}`;
-    const known = all.get(name);
+  const profiles = new Map<string, Profile>();
+  const add = (profile: Profile, claimed: boolean): Configuration => {
+    const known = all.get(profile.text);
     if (known) return known;
-    const configuration = { ...examineFamily(profile, claimed, input, setting, orders), profile: name };
-    all.set(name, configuration);
-    profiles.set(name, profile);
+    const configuration = examine(profile, claimed, input, orders);
+    all.set(profile.text, configuration);
+    profiles.set(profile.text, profile);
     return configuration;
   };
   for (const claim of claims)
-    if (claim.kind === 'configuration') {
-      byClaim.set(claim.id, examine(claimedProfile(claim, lattice), true));
-    }
-  for (const { name } of input.case.fields)
-    for (const profile of defaultFamilies(lattice, name, input.shifts, input.pointGroup))
-      examine(profile, false);
+    if (claim.kind === 'configuration') byClaim.set(claim.id, add(claimedProfile(claim, input.case), true));
+  for (const profile of defaultFamilies(lattice, fields, input.shifts, input.pointGroup)) add(profile, false);
   return { configurations: [...all.values()], byClaim, profiles };
 }
 
-function claimedProfile(claim: Extract<Claim, { kind: 'configuration' }>, lattice: Lattice): FamilyProfile {
+function claimedProfile(
+  claim: Extract<Claim, { kind: 'configuration' }>,
+  { lattice, fields }: Case,
+): Profile {
+  const { text, tree } = claim.profile;
+  const name = fields.length === 1 ? text : `${claim.field}: ${text}`;
   try {
-    return readFamilyProfile(claim.profile.text, claim.profile.tree, lattice, claim.field);
+    return readConfiguration(tree, lattice, fields, claim.field, name);
   } catch (error) {
     if (error instanceof NotationError) throw new InputError(error.problem, error.mend, claim.position);
     throw error;
   }
 }
 
-function examineFamily(
-  profile: FamilyProfile,
+/** Orders of the expansion as they come out of the Taylor series, before total derivatives are dropped: a family on which
+ *  every linear form vanishes then annihilates every order. */
+function rawOrders(expansion: Expansion, theCase: Case): Map<number, Density> {
+  const orders = new Map<number, Map<JetMonomial, Coefficient>>();
+  for (const { raw, base } of expansion.byTerm)
+    for (const [monomial, coefficient] of raw.terms)
+      for (const part of coefficient.terms) {
+        const order = [...spacingOrder(part, theCase.lattice)].reduce((s, [k, n]) => s + n - base.get(k)!, 0);
+        if (order > expansion.through) continue;
+        const total = Math.max(0, order);
+        const terms = orders.get(total) ?? new Map<JetMonomial, Coefficient>();
+        orders.set(total, terms);
+        addTerm(terms, monomial, Coefficient.ofTerm(part));
+      }
+  return new Map(
+    [...orders].sort(([x], [y]) => x - y).map(([n, terms]) => [n, new Density(expansion.space, terms)]),
+  );
+}
+
+function examine(
+  profile: Profile,
   claimed: boolean,
   input: RoughInput,
-  setting: ScalingSetting,
-  orders: readonly ExpansionOrder[],
+  orders: ReadonlyMap<number, Density>,
 ): Configuration {
-  const { parent, lattice } = input.case;
-  const byTerm = new Map(parent.terms.map((t) => [t.name, latticeScaling(t.expression, profile, setting)]));
-  const onLattice = mostSingular(byTerm.values());
-  const inContinuum = densityScaling(input.proposalDensity, profile, setting);
-  const corrections = correctionScalings(orders, input.expansion.space, profile, setting);
-  const isDivergent = (s: FullScaling | undefined): boolean => s !== undefined && s.a.sign < 0;
+  const { case: theCase, matching } = input;
+  const { lattice, parent, expand } = theCase;
+  const fields = theCase.fields.map((f) => f.name);
+  const setting = { lattice, fields, background: expand.background, scaling: matching.scaling };
+  let undecided = obstacle(profile, theCase);
+  const attempt = (find: () => Scaling): Scaling => {
+    try {
+      return find();
+    } catch (error) {
+      if (!(error instanceof LimitError || error instanceof ExpansionPointError)) throw error;
+      undecided ??= error.message;
+      return 'zero';
+    }
+  };
+  const byTerm = new Map(
+    parent.terms.map((t) => [t.name, attempt(() => latticeScaling(t.expression, profile, setting))]),
+  );
+  const family = new ContinuumFamily(profile, lattice, fields);
+  const continuum = theCase.proposal
+    ? attempt(() => family.ofLagrangian(theCase.proposal!.lagrangian, expand.background, matching.scaling))
+    : family.ofDensity(input.proposalDensity, matching.scaling);
+  const scalings = [...orders].map(([order, density]) => ({
+    order,
+    scaling: family.ofDensity(density, matching.scaling),
+  }));
+  const { corrections, truncates } = judgeSeries(scalings);
+  const onLattice = mostSingular([...byTerm.values()]);
   return {
     profile: profile.text,
     claimed,
-    lattice: asScaling(onLattice),
-    continuum: asScaling(inContinuum),
-    suppressed: { lattice: isDivergent(onLattice), continuum: isDivergent(inContinuum) },
-    truncates: corrections.truncates,
-    corrections: corrections.list,
-    byTerm: new Map([...byTerm].map(([name, s]) => [name, asScaling(s)])),
+    lattice: onLattice,
+    continuum,
+    suppressed: { lattice: diverges(onLattice), continuum: diverges(continuum) },
+    truncates,
+    corrections,
+    byTerm,
     mixedAction: mixedActionText(
-      parent.terms.filter((t) => byTerm.get(t.name) !== undefined),
+      parent.terms.filter((t) => byTerm.get(t.name) !== 'zero'),
       profile,
       lattice,
+      expand.background,
     ),
-    undecided: openPower(onLattice, 'lattice') ?? openPower(inContinuum, 'continuum'),
+    undecided,
   };
 }
 
-/** A power of the time spacing that is left when it should have cancelled. */
-function openPower(scaling: FullScaling | undefined, side: string): string | undefined {
-  return scaling && !scaling.b.isZero
-    ? `the ${side} action keeps the power ${scaling.b} of the time spacing, so its exponent in a means nothing by itself`
-    : undefined;
-}
-
-interface Corrections {
-  readonly list: CorrectionScaling[];
-  readonly truncates: boolean;
-}
-
-/** Every order of the expansion that is left when the time spacing has gone to zero. The series truncates iff the orders after
- *  the first that does not vanish are all less singular than it. */
-function correctionScalings(
-  orders: readonly ExpansionOrder[],
-  space: JetSpace,
-  profile: FamilyProfile,
-  setting: ScalingSetting,
-): Corrections {
-  const byOrder = new Map<number, (FullScaling | undefined)[]>();
-  for (const { total, terms } of orders) {
-    const density = new Density(space, new Map(terms.map((t) => [t.monomial, t.coefficient])));
-    const scaling = densityScaling(density, profile, setting);
-    if (scaling && scaling.b.sign > 0) continue;
-    byOrder.set(total, [...(byOrder.get(total) ?? []), scaling]);
-  }
-  const scalings = [...byOrder].map(([order, list]) => ({ order, scaling: mostSingular(list) }));
-  const first = scalings.find((s) => s.scaling !== undefined);
-  const leading = scalings.find((s) => s.order <= 0 && s.scaling !== undefined)?.scaling;
-  const isAsSingular = (s: FullScaling, than: Rational): boolean => s.a.compare(than) <= 0;
-  const list = scalings
+function judgeSeries(scalings: readonly { order: number; scaling: Scaling }[]): {
+  corrections: CorrectionScaling[];
+  truncates: boolean;
+} {
+  const leading = scalings.find((s) => s.order === 0)?.scaling ?? 'zero';
+  const corrections = scalings
     .filter((s) => s.order > 0)
     .map(({ order, scaling }) => ({
       order,
-      scaling: asScaling(scaling),
-      sameAsLeading: scaling !== undefined && leading !== undefined && isAsSingular(scaling, leading.a),
+      scaling,
+      sameAsLeading: scaling !== 'zero' && leading !== 'zero' && compareSingularity(scaling, leading) <= 0,
     }));
-  const truncates = !scalings.some(
-    ({ order, scaling }) =>
-      first?.scaling !== undefined &&
-      order > first.order &&
-      scaling !== undefined &&
-      isAsSingular(scaling, first.scaling.a),
-  );
-  return { list, truncates };
+  const present = scalings.flatMap((s) => (s.scaling === 'zero' ? [] : [s.scaling]));
+  const truncates = present.every((s, i) => i === 0 || compareSingularity(present[i - 1]!, s) < 0);
+  return { corrections, truncates };
+}
+
+/** Why the powers of a family cannot be counted, if they cannot. */
+function obstacle(profile: Profile, theCase: Case): string | undefined {
+  const { axes } = theCase.lattice;
+  const mixes = (row: readonly number[]): boolean =>
+    new Set(row.flatMap((e, k) => (e === 0 ? [] : [axes[k]!.role]))).size > 1;
+  const factors = profile.terms.flatMap((t) => t.factors);
+  if (factors.some((f) => (isLocal(f) ? [f.row] : f.rows).some(mixes)))
+    return 'an argument mixes space with time, whose spacings go to zero at different rates';
+  const uses = new Map<string, Set<string>>();
+  for (const f of factors)
+    if (f.kind === 'smooth') uses.set(f.name, (uses.get(f.name) ?? new Set()).add(JSON.stringify(f.rows)));
+  if (factors.some(isLocal) && [...uses.values()].some((arguments_) => arguments_.size > 1))
+    return 'values of one smooth function may coincide where the family is localised; give the functions different names';
+  return undefined;
 }

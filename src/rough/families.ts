@@ -2,12 +2,14 @@
 // directions, sums of functions of one coordinate each, rough in one direction and smooth in another, and what the shift
 // analysis found. Families that a lattice symmetry maps into each other are examined once.
 
-import { type Lattice, spaceAxes } from '../model/geometry.ts';
+import { Rational } from '../exact/rational.ts';
+import { type Field, type Lattice, spaceAxes } from '../model/geometry.ts';
 import { readTree } from '../notation/parse.ts';
-import { NotationError } from '../notation/source.ts';
 import type { ShiftAnalysis } from '../symmetry/family.ts';
 import type { PointGroupAnalysis } from '../symmetry/pointGroup.ts';
-import { type FamilyProfile, type ProfileFactor, readFamilyProfile } from './familyProfile.ts';
+import { isLocal, type Profile, type ProfileFactor } from './profile.ts';
+import { readConfiguration, shiftConfiguration } from './readConfiguration.ts';
+import { dot } from './regions.ts';
 
 const FREE = ['f', 'g', 'h'];
 
@@ -33,68 +35,69 @@ function defaultTexts(lattice: Lattice): string[] {
   ];
 }
 
-/** All families to examine besides the claimed ones. */
+/** All families to examine besides the claimed ones: for every field the default ones, then what the shift analysis found. */
 export function defaultFamilies(
   lattice: Lattice,
-  field: string,
+  fields: readonly Field[],
   shifts: ShiftAnalysis,
   pointGroup: PointGroupAnalysis,
-): FamilyProfile[] {
+): Profile[] {
   const found = shifts.symmetries
     .filter(
-      (s) =>
-        s.family.discrete === undefined &&
-        (s.family.free.length > 0 || s.family.phase.some((p) => !p.isZero)),
+      ({ family }) =>
+        family.discrete === undefined && (family.free.length > 0 || family.phase.some((p) => !p.isZero)),
     )
-    .map((s) => s.family.profile);
+    .map((s) => shiftConfiguration(s.family));
+  const read = (field: string, text: string): Profile =>
+    readConfiguration(
+      readTree(text),
+      lattice,
+      fields,
+      field,
+      fields.length === 1 ? text : `${field}: ${text}`,
+    );
+  const texts = defaultTexts(lattice);
+  const all = [...fields.flatMap(({ name }) => texts.map((text) => read(name, text))), ...found];
   const seen = new Set<string>();
-  return [...defaultTexts(lattice), ...found].flatMap((text) => {
-    const profile = readable(text, lattice, field);
-    if (!profile) return [];
-    const orbit = pointGroup.elements.map((e) => imageKey(profile, e.matrix));
-    const key = [...orbit].sort()[0] ?? imageKey(profile, []);
-    if (seen.has(key)) return [];
-    seen.add(key);
-    return [profile];
+  return all.filter((profile) => {
+    // An element that permutes the fields would need the profile's fields permuted too; those merge nothing.
+    const elements = pointGroup.elements.filter((e) => e.fields.every((f, i) => f.field === i));
+    const [key] = elements.map((e) => imageKey(profile, e.matrix)).sort();
+    const name = key ?? imageKey(profile, []);
+    if (seen.has(name)) return false;
+    seen.add(name);
+    return true;
   });
 }
 
-/** A family found by the shift analysis may hold functions that profiles lack (waves); those are left out. */
-function readable(text: string, lattice: Lattice, field: string): FamilyProfile | undefined {
-  try {
-    return readFamilyProfile(text, readTree(text), lattice, field);
-  } catch (error) {
-    if (error instanceof NotationError) return undefined;
-    throw error;
-  }
-}
-
 /** Name of the family after a lattice map; reflections do not matter, since f(-x) is as free as f(x). */
-function imageKey(profile: FamilyProfile, matrix: readonly (readonly number[])[]): string {
-  const image = (functional: readonly number[]): string => {
-    const moved =
-      matrix.length === 0
-        ? [...functional]
-        : functional.map((_, i) => functional.reduce((sum, n, k) => sum + n * matrix[k]![i]!, 0));
-    const first = moved.find((n) => n !== 0) ?? 1;
-    return moved.map((n) => (first < 0 ? -n : n)).join(',');
+function imageKey(profile: Profile, matrix: readonly (readonly number[])[]): string {
+  const moved = (row: readonly number[]): number[] =>
+    matrix.length === 0
+      ? [...row]
+      : row.map((_, i) =>
+          dot(
+            row,
+            matrix.map((m) => m[i]!),
+          ),
+        );
+  const image = (row: readonly number[]): string => {
+    const out = moved(row);
+    const first = out.find((n) => n !== 0) ?? 1;
+    return out.map((n) => (n === 0 ? 0 : first < 0 ? -n : n)).join(',');
   };
-  const factorKey = (f: ProfileFactor): string => {
-    switch (f.kind) {
-      case 'free':
-      case 'smooth':
-        return `${f.kind}(${f.arguments.map(image).sort().join(';')})`;
-      case 'step':
-      case 'site':
-        return `${f.kind}(${image(f.functional)})`;
-      case 'staggered':
-        return `parity(${image(f.parity)})`;
-      case 'coordinate':
-        return `coordinate ${f.axis}^${f.power}`;
-    }
-  };
+  const factorKey = (f: ProfileFactor): string =>
+    isLocal(f) ? `${f.kind}(${image(f.row)})` : `${f.kind}(${f.rows.map(image).sort().join(';')})`;
+  const twelfths = (phase: readonly Rational[]): string =>
+    image(phase.map((p) => Number(p.mul(Rational.of(12)).num)));
+  // Letters and heights are dummies; a polynomial is compared only with itself.
   return profile.terms
-    .map((t) => `${t.weight}:${t.factors.map(factorKey).sort().join('*')}`)
+    .map((t) => {
+      const polynomial = t.polynomial.map(
+        (m) => `${m.exponents.some((n) => n > 0) ? m.exponents : ''}${m.weight.asRational ?? 'pi'}`,
+      );
+      return `${t.field}|${polynomial.join('+')}|${twelfths(t.phase)}|${t.factors.map(factorKey).sort().join('*')}`;
+    })
     .sort()
-    .join('+');
+    .join(' + ');
 }

@@ -1,112 +1,119 @@
-// Sums of an action over real periodic lattices, in floats. Static fields only: one time slice is summed, and the time spacing
-// is set to one, which the powers of the parameters take into account.
+// Sums of an action over real periodic lattices, in floats. A whole lattice is evaluated at once: every node of the
+// expression becomes one array over the sites.
 
-import { summands } from '../limit/expansion.ts';
 import type { Expression, LinearForm } from '../model/action.ts';
 
-/** Field values on the sites of one time slice; coordinates in lattice units, one per axis (time is 0). */
-export type SiteField = (site: readonly number[]) => number;
+/** A periodic lattice: sites along every axis, in the order of the case; 1 for an axis along which nothing varies. */
+export type Box = readonly number[];
 
-type Evaluate = (site: readonly number[], field: SiteField) => number;
+/** Site values of the fields in a box, the last axis fastest; a field that is left out is zero. */
+export type FieldValues = ReadonlyMap<string, Float64Array>;
 
-/** A function of the site that evaluates an expression per cell. Parameter values by name; every field takes the same values
- *  when its name is `varied`, and zero otherwise. */
-export function compileExpression(
-  expression: Expression,
-  values: ReadonlyMap<string, number>,
-  varied: string,
-): Evaluate {
-  const parts = summands(expression).map(({ weight, factor }) => ({
-    weight: weight.toNumber(values),
-    evaluate: compile(factor, values, varied),
-  }));
-  return (site, field) => parts.reduce((sum, p) => sum + p.weight * p.evaluate(site, field), 0);
+/** Fills a box: one value per site. */
+export function onSites(box: Box, value: (site: readonly number[]) => number): Float64Array {
+  const out = new Float64Array(box.reduce((n, size) => n * size, 1));
+  const site = new Array<number>(box.length).fill(0);
+  for (let i = 0; i < out.length; i++) {
+    out[i] = value(site);
+    for (let k = box.length - 1; k >= 0 && ++site[k]! === box[k]!; k--) site[k] = 0;
+  }
+  return out;
 }
 
-function compile(e: Expression, values: ReadonlyMap<string, number>, varied: string): Evaluate {
-  const recurse = (x: Expression): Evaluate => compile(x, values, varied);
-  switch (e.kind) {
-    case 'constant': {
-      const value = e.value.toNumber(values);
-      return () => value;
+/** Index of site r + offset for every site r of a periodic box. */
+function neighbours(box: Box, offset: readonly number[]): Int32Array {
+  let out = new Int32Array(1);
+  for (const [k, size] of box.entries()) {
+    const next = new Int32Array(out.length * size);
+    for (let i = 0; i < out.length; i++)
+      for (let x = 0; x < size; x++)
+        next[i * size + x] = out[i]! * size + ((((x + offset[k]!) % size) + size) % size);
+    out = next;
+  }
+  return out;
+}
+
+/** Evaluates expressions on one box; remembers the neighbour tables. */
+export class LatticeBox {
+  private readonly tables = new Map<string, Int32Array>();
+  readonly sites: number;
+
+  constructor(
+    readonly box: Box,
+    private readonly parameters: ReadonlyMap<string, number>,
+  ) {
+    this.sites = box.reduce((n, size) => n * size, 1);
+  }
+
+  /** Σ over all sites of an expression of the fields. */
+  sum(expression: Expression, fields: FieldValues): number {
+    const value = this.evaluate(expression, fields);
+    if (typeof value === 'number') return value * this.sites;
+    let sum = 0;
+    for (let i = 0; i < value.length; i++) sum += value[i]!;
+    return sum;
+  }
+
+  private evaluate(e: Expression, fields: FieldValues): Value {
+    const recurse = (x: Expression): Value => this.evaluate(x, fields);
+    switch (e.kind) {
+      case 'constant':
+        return e.value.toNumber(this.parameters);
+      case 'linear':
+        return this.form(e.form, fields);
+      case 'sum':
+        return e.terms.map(recurse).reduce(add, 0);
+      case 'product':
+        return e.factors.map(recurse).reduce(multiply, 1);
+      case 'power': {
+        const { exponent } = e;
+        return mapped(recurse(e.base), exponent === 2 ? (x) => x * x : (x) => x ** exponent);
+      }
+      case 'function':
+        return mapped(recurse(e.argument), Math[e.name]);
     }
-    case 'linear':
-      return compileForm(e.form, values, varied);
-    case 'sum': {
-      const terms = e.terms.map(recurse);
-      return (site, field) => terms.reduce((sum, t) => sum + t(site, field), 0);
+  }
+
+  private form(form: LinearForm, fields: FieldValues): Float64Array {
+    const out = new Float64Array(this.sites);
+    for (const [name, stencil] of form) {
+      const field = fields.get(name);
+      if (!field) continue;
+      for (const { exponents, weight } of stencil.terms) {
+        const factor = weight.toNumber(this.parameters);
+        const table = this.table(exponents);
+        for (let i = 0; i < out.length; i++) out[i]! += factor * field[table[i]!]!;
+      }
     }
-    case 'product': {
-      const factors = e.factors.map(recurse);
-      return (site, field) => factors.reduce((p, f) => p * f(site, field), 1);
-    }
-    case 'power': {
-      const base = recurse(e.base);
-      return (site, field) => base(site, field) ** e.exponent;
-    }
-    case 'function': {
-      const argument = recurse(e.argument);
-      const f = Math[e.name];
-      return (site, field) => f(argument(site, field));
-    }
+    return out;
+  }
+
+  private table(offset: readonly number[]): Int32Array {
+    const key = offset.join(',');
+    const known = this.tables.get(key) ?? neighbours(this.box, offset);
+    this.tables.set(key, known);
+    return known;
   }
 }
 
-function compileForm(form: LinearForm, values: ReadonlyMap<string, number>, varied: string): Evaluate {
-  const stencil = form.get(varied);
-  if (!stencil) return () => 0;
-  const points = stencil.terms.map(({ exponents, weight }) => ({
-    offset: exponents,
-    weight: weight.toNumber(values),
-  }));
-  const moved: number[] = [];
-  return (site, field) => {
-    let sum = 0;
-    for (const { offset, weight } of points) {
-      for (let k = 0; k < site.length; k++) moved[k] = site[k]! + offset[k]!;
-      sum += weight * field(moved);
-    }
-    return sum;
-  };
+type Value = number | Float64Array;
+
+/** x + y; arrays are fresh in every node, so that one of them can take the result. */
+function add(x: Value, y: Value): Value {
+  if (typeof x === 'number') return typeof y === 'number' ? x + y : add(y, x);
+  for (let i = 0; i < x.length; i++) x[i]! += typeof y === 'number' ? y : y[i]!;
+  return x;
 }
 
-/** Σ over the sites of one time slice of a periodic lattice with `size` sites along every space axis. */
-export function sliceSum(
-  evaluate: Evaluate,
-  field: SiteField,
-  size: number,
-  axes: number,
-  space: readonly number[],
-): number {
-  const site = new Array<number>(axes).fill(0);
-  let sum = 0;
-  const visit = (k: number): void => {
-    const axis = space[k];
-    if (axis === undefined) {
-      sum += evaluate(site, field);
-      return;
-    }
-    for (let x = 0; x < size; x++) {
-      site[axis] = x;
-      visit(k + 1);
-    }
-    site[axis] = 0;
-  };
-  visit(0);
-  return sum;
+function multiply(x: Value, y: Value): Value {
+  if (typeof x === 'number') return typeof y === 'number' ? x * y : multiply(y, x);
+  if (y === 1) return x;
+  for (let i = 0; i < x.length; i++) x[i]! *= typeof y === 'number' ? y : y[i]!;
+  return x;
 }
 
-/** The field with its values on one period remembered, so that every site is computed once. */
-export function tabulated(field: SiteField, size: number, space: readonly number[]): SiteField {
-  const table = new Float64Array(size ** space.length).fill(Number.NaN);
-  return (site) => {
-    let index = 0;
-    for (let i = 0; i < space.length; i++) index = index * size + (((site[space[i]!]! % size) + size) % size);
-    const known = table[index]!;
-    if (!Number.isNaN(known)) return known;
-    const wrapped = site.map((x, k) => (space.includes(k) ? ((x % size) + size) % size : 0));
-    const value = field(wrapped);
-    table[index] = value;
-    return value;
-  };
+function mapped(x: Value, f: (x: number) => number): Value {
+  if (typeof x === 'number') return f(x);
+  for (let i = 0; i < x.length; i++) x[i] = f(x[i]!);
+  return x;
 }

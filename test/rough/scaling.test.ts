@@ -144,7 +144,7 @@ describe('the series in the spacing', () => {
 
   it('prints the mixed action with lattice operators along rough directions only', () => {
     const [mixed] = examine(sheet, ['f(x) s(y)']);
-    expect(mixed!.mixedAction).toBe('plaquette: J*(1 - cos((a T_x d_y - a d_y) phi))');
+    expect(mixed!.mixedAction).toBe('plaquette: J*a^2/2 (Delta_x d_y phi)^2');
   });
 });
 
