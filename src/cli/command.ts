@@ -73,8 +73,12 @@ function program(done: (code: number) => void): Command {
       });
   };
   section('expand', 'expand the lattice action in the spacings, modulo total derivatives')
+    .option('--raw', 'also show the series before total derivatives are dropped')
     .option('--second-opinion', 'compare the Taylor coefficients with those of an independent algebra system')
-    .addHelpText('after', example('saltus expand sheet.yaml', 'saltus expand --second-opinion sheet.yaml'));
+    .addHelpText(
+      'after',
+      example('saltus expand sheet.yaml', 'saltus expand --raw --second-opinion sheet.yaml'),
+    );
   section(
     'symmetries',
     'list shift symmetries and the point group, on the lattice and in the continuum',

@@ -1,11 +1,18 @@
 // `saltus expand`, `saltus symmetries`, `saltus configurations`: one section of the report of one case, no judgement.
 
+import { rawOrders } from '../limit/expansion.ts';
 import type { Expression } from '../model/action.ts';
 import type { Case } from '../model/case.ts';
 import type { FunctionName } from '../notation/tree.ts';
 import { type Block, heading, paragraph, toned } from '../report/document.ts';
 import { safeJson } from '../report/escape.ts';
-import { configurationBlocks, expansionBlocks, matchingBlocks, symmetryBlocks } from '../report/evidence.ts';
+import {
+  configurationBlocks,
+  expansionBlocks,
+  matchingBlocks,
+  rawExpansionBlocks,
+  symmetryBlocks,
+} from '../report/evidence.ts';
 import type { CheckReport } from '../report/findings.ts';
 import type { Section } from '../report/json.ts';
 import type { Analyses } from '../rules/facts.ts';
@@ -25,6 +32,8 @@ const SECTIONS: Record<Section, (analyses: Analyses) => Block[]> = {
 /** Options of `expand`: the others have no second opinion. */
 export interface SectionOptions extends CheckOptions {
   readonly secondOpinion?: boolean;
+  /** Also show the series before total derivatives are dropped. */
+  readonly raw?: boolean;
 }
 
 /** Functions that occur in the parent action, each once, sorted. */
@@ -103,12 +112,18 @@ export async function printSection(section: Section, file: string, options: Sect
   const report = runCase(file, rulesFor(options.rules), options);
   const opinions = options.secondOpinion ? await opinionsFor(report) : undefined;
   if (options.format === 'json') {
-    const { jsonRecord } = await import('../report/json.ts');
+    const { jsonRecord, orderRecords } = await import('../report/json.ts');
+    const { expansion, case: theCase } = report.analyses;
+    const { limits } = theCase.lattice;
+    const raw = options.raw
+      ? { raw: orderRecords(rawOrders(expansion, theCase.lattice), expansion.space, limits) }
+      : {};
     const extra = opinions ? { secondOpinion: opinions } : {};
-    deliver(safeJson({ ...jsonRecord(report, section), ...extra }), options.out);
+    deliver(safeJson({ ...jsonRecord(report, section), ...raw, ...extra }), options.out);
     return EXIT.ok;
   }
   const blocks: Block[] = [heading(1, report.analyses.case.id), ...SECTIONS[section](report.analyses)];
+  if (options.raw) blocks.push(...rawExpansionBlocks(report.analyses));
   if (opinions) blocks.push(...opinionBlocks(opinions));
   deliver(await renderDocument(blocks, options), options.out);
   return EXIT.ok;

@@ -1,6 +1,6 @@
 // The evidence behind a report: matching, symmetries, rough configurations, expansion, witnesses.
 
-import type { ExpansionOrder } from '../limit/expansion.ts';
+import { type Expansion, type ExpansionOrder, rawOrders } from '../limit/expansion.ts';
 import type { Matching, MatchingDifference } from '../limit/matching.ts';
 import type { Configuration } from '../rough/profile.ts';
 import type { Analyses } from '../rules/facts.ts';
@@ -231,7 +231,6 @@ function orderWords(order: ExpansionOrder): string {
 
 /** The expanded Lagrangian density modulo total derivatives, order by order. */
 export function expansionBlocks({ expansion, case: theCase }: Analyses): Block[] {
-  const spacings = theCase.lattice.limits;
   const cut =
     expansion.fieldCut === undefined
       ? ''
@@ -241,21 +240,41 @@ export function expansionBlocks({ expansion, case: theCase }: Analyses): Block[]
     paragraph(
       `Lagrangian density modulo total derivatives, complete through relative order ${expansion.through}.${cut}`,
     ),
-    ...expansion.orders.flatMap((order): Block[] => [
-      heading(3, orderWords(order)),
-      order.terms.length === 0
-        ? paragraph('No term.')
-        : {
-            kind: 'table',
-            head: ['coefficient', 'monomial', 'from'],
-            rows: order.terms.map((t) => [
-              [coefficientPiece(t.coefficient, spacings)],
-              [monomialPiece(expansion.space, t.monomial)],
-              [t.from.join(', ')],
-            ]),
-          },
-    ]),
+    ...orderBlocks(expansion.orders, expansion, theCase),
   ];
+}
+
+/** The series as it comes out of the Taylor expansion about the centre of each stencil: what stands here and not under
+ *  "Expansion" differs from it by total derivatives, the boundary terms that were dropped. */
+export function rawExpansionBlocks({ expansion, case: theCase }: Analyses): Block[] {
+  return [
+    heading(2, 'Before dropping total derivatives'),
+    paragraph(
+      'The Taylor series about the centre of each stencil. It differs from the expansion above by total derivatives.',
+    ),
+    ...orderBlocks(rawOrders(expansion, theCase.lattice), expansion, theCase),
+  ];
+}
+
+function orderBlocks(
+  orders: readonly ExpansionOrder[],
+  { space }: Expansion,
+  { lattice }: Analyses['case'],
+): Block[] {
+  return orders.flatMap((order): Block[] => [
+    heading(3, orderWords(order)),
+    order.terms.length === 0
+      ? paragraph('No term.')
+      : {
+          kind: 'table',
+          head: ['coefficient', 'monomial', 'from'],
+          rows: order.terms.map((t) => [
+            [coefficientPiece(t.coefficient, lattice.limits)],
+            [monomialPiece(space, t.monomial)],
+            [t.from.join(', ')],
+          ]),
+        },
+  ]);
 }
 
 const WITNESS_TONES = { confirms: 'good', contradicts: 'bad', inconclusive: 'warning' } as const;

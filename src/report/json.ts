@@ -3,7 +3,7 @@
 
 import type { Quotient } from '../exact/quotient.ts';
 import type { Rational } from '../exact/rational.ts';
-import type { ExpansionTerm, MultiOrder } from '../limit/expansion.ts';
+import type { ExpansionOrder, ExpansionTerm, MultiOrder } from '../limit/expansion.ts';
 import type { JetSpace } from '../limit/jets.ts';
 import type { MatchingDifference } from '../limit/matching.ts';
 import type { ChargeEnergy, Configuration, Scaling } from '../rough/profile.ts';
@@ -44,12 +44,21 @@ function expansion({ expansion: e, case: theCase }: Analyses): object {
   return {
     through: e.through,
     fieldCut: e.fieldCut ?? null,
-    orders: e.orders.map((o) => ({
-      order: multiOrder(o.order),
-      total: o.total,
-      terms: o.terms.map((t) => term(e.space, t, theCase.lattice.limits)),
-    })),
+    orders: orderRecords(e.orders, e.space, theCase.lattice.limits),
   };
+}
+
+/** Orders of an expansion as plain data. */
+export function orderRecords(
+  orders: readonly ExpansionOrder[],
+  space: JetSpace,
+  spacings: readonly string[],
+): object[] {
+  return orders.map((o) => ({
+    order: multiOrder(o.order),
+    total: o.total,
+    terms: o.terms.map((t) => term(space, t, spacings)),
+  }));
 }
 
 /** Whether the exact lattice symmetries allow a monomial that only the proposal has; null where that was not asked. */
