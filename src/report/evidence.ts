@@ -96,7 +96,7 @@ function scalingWords(matching: Matching): string {
         .map(([s, e]) => (e.isOne ? s : `${s}^${e.isInteger ? e : `(${e})`}`));
       return product.length === 0
         ? `${parameter} is constant`
-        : `${parameter} grows like ${product.join(' ')}`;
+        : `${parameter} scales like ${product.join(' ')}`;
     })
     .join(', ');
 }
