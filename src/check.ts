@@ -2,6 +2,7 @@
 // → claims → findings. It orders the analyses and decides nothing itself.
 
 import { judgeClaim } from './claims/judge.ts';
+import type { Verdict } from './claims/verdict.ts';
 import { type Expansion, expandAction } from './limit/expansion.ts';
 import { Density, type JetMonomial } from './limit/jets.ts';
 import { type Matching, matchProposal, proposalDensity, proposeContinuum } from './limit/matching.ts';
@@ -17,7 +18,7 @@ import { type CheckReport, isFailure } from './report/findings.ts';
 import { chargeEnergies } from './rough/charges.ts';
 import { analyseConfigurations } from './rough/configurations.ts';
 import { applyRules } from './rules/evaluate.ts';
-import type { Analyses, Verdict } from './rules/facts.ts';
+import type { Analyses } from './rules/facts.ts';
 import type { Rule } from './rules/load.ts';
 import { transformDensity } from './symmetry/continuumElement.ts';
 import { isDiscreteContinuumShift } from './symmetry/discreteShift.ts';

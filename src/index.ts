@@ -1,6 +1,7 @@
 // What a library user may import: read a case, load rules, check, render. Nothing here prints or exits.
 
 export { checkCase } from './check.ts';
+export type { ClaimVerdict, Verdict } from './claims/verdict.ts';
 export { shippedRules } from './cli/shippedRules.ts';
 export type { Case } from './model/case.ts';
 export { readCase } from './model/caseFile.ts';
@@ -11,5 +12,5 @@ export type { CheckReport } from './report/findings.ts';
 export { renderJson } from './report/json.ts';
 export { markdownReport, textReport } from './report/reports.ts';
 export { version } from './report/version.ts';
-export type { Analyses, ClaimVerdict, Finding, Verdict } from './rules/facts.ts';
+export type { Analyses, Finding } from './rules/facts.ts';
 export { loadRules, type Rule } from './rules/load.ts';

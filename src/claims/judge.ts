@@ -2,6 +2,7 @@
 // verdict comes with what was found, so that a failed claim says what is true instead.
 
 import { torusShiftCount } from '../census/torus.ts';
+import type { ClaimVerdict } from '../claims/verdict.ts';
 import { Rational } from '../exact/rational.ts';
 import type { Expansion, ExpansionOrder } from '../limit/expansion.ts';
 import { Density } from '../limit/jets.ts';
@@ -11,7 +12,6 @@ import type { Case } from '../model/case.ts';
 import type { Claim, Status } from '../model/claim.ts';
 import { spaceAxes, timeAxis } from '../model/geometry.ts';
 import type { Configuration, Scaling } from '../rough/profile.ts';
-import type { ClaimVerdict } from '../rules/facts.ts';
 import type { ShiftFamily } from '../symmetry/family.ts';
 import type { PointGroupAnalysis } from '../symmetry/pointGroup.ts';
 import { readShiftProfile } from '../symmetry/shiftProfile.ts';

@@ -1,6 +1,7 @@
 // What one check hands to the reports. The reports only arrange and print it: no verdict is made in this room.
 
-import type { Analyses, Finding, Verdict } from '../rules/facts.ts';
+import type { Verdict } from '../claims/verdict.ts';
+import type { Analyses, Finding } from '../rules/facts.ts';
 
 /** Everything that a report of one case may show. */
 export interface CheckReport {

@@ -1,7 +1,8 @@
 // What a report says, in the order in which a reader needs it: the verdict, the claims, the findings, then the evidence.
 
+import type { ClaimVerdict, Verdict } from '../claims/verdict.ts';
 import type { Claim } from '../model/claim.ts';
-import type { ClaimVerdict, Finding, Verdict } from '../rules/facts.ts';
+import type { Finding } from '../rules/facts.ts';
 import {
   type Block,
   heading,

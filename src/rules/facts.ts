@@ -1,26 +1,13 @@
-// types; the facts vocabulary is read from these analyses
+// Everything the analyses produced for one case, and what a rule may say about it.
 
+import type { ClaimVerdict } from '../claims/verdict.ts';
 import type { Expansion } from '../limit/expansion.ts';
 import type { Matching } from '../limit/matching.ts';
 import type { Case } from '../model/case.ts';
-import type { Claim } from '../model/claim.ts';
 import type { ChargeEnergy, Configuration } from '../rough/profile.ts';
 import type { ShiftAnalysis } from '../symmetry/family.ts';
 import type { PointGroupAnalysis } from '../symmetry/pointGroup.ts';
 import type { WitnessRecord } from '../witness/witness.ts';
-
-export type Verdict = 'holds' | 'fails' | 'undecided';
-
-export interface ClaimVerdict {
-  readonly claim: Claim;
-  readonly verdict: Verdict;
-  /** What the tool found, in one or two sentences with the formula. */
-  readonly found: string;
-  /** For shift claims that hold: the parameter may depend freely on time. */
-  readonly redundancy?: boolean;
-  /** For claims about corrections: the claimed first order and the one found. */
-  readonly corrections?: { readonly claimed: number; readonly found: number };
-}
 
 /** Everything the analyses produced for one case. */
 export interface Analyses {

@@ -1,9 +1,9 @@
 import { describe, expect, it } from 'vitest';
 import { checkCase } from '../../src/check.ts';
 import { evaluateCount } from '../../src/claims/countFormula.ts';
+import type { ClaimVerdict } from '../../src/claims/verdict.ts';
 import { readTree } from '../../src/notation/parse.ts';
 import { NotationError } from '../../src/notation/source.ts';
-import type { ClaimVerdict } from '../../src/rules/facts.ts';
 import { type InlineCase, inlineCase, kinetic } from '../inlineCase.ts';
 
 const sheet: InlineCase = {

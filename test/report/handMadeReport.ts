@@ -1,6 +1,7 @@
 // A small report made by hand, so that the formats are tested without the analyses. The values are invented but of the
 // right shape: an angle on a square sheet with one time-like and one ring-exchange term.
 
+import type { ClaimVerdict } from '../../src/claims/verdict.ts';
 import { Coefficient } from '../../src/exact/coefficient.ts';
 import { Quotient } from '../../src/exact/quotient.ts';
 import { Rational, rational } from '../../src/exact/rational.ts';
@@ -11,7 +12,7 @@ import type { Case } from '../../src/model/case.ts';
 import type { Claim } from '../../src/model/claim.ts';
 import type { CheckReport } from '../../src/report/findings.ts';
 import type { Configuration, Scaling } from '../../src/rough/profile.ts';
-import type { Analyses, ClaimVerdict, Finding } from '../../src/rules/facts.ts';
+import type { Analyses, Finding } from '../../src/rules/facts.ts';
 import type { PointGroupAnalysis } from '../../src/symmetry/pointGroup.ts';
 
 const position = { file: 'sheet.yaml', line: 1, column: 1 };
