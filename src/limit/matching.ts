@@ -4,7 +4,7 @@
 import { Coefficient } from '../exact/coefficient.ts';
 import { LaurentPolynomial } from '../exact/laurentPolynomial.ts';
 import { Quotient, rationalRatio } from '../exact/quotient.ts';
-import { type Rational, rational } from '../exact/rational.ts';
+import { Rational, rational } from '../exact/rational.ts';
 import type { Expression } from '../model/action.ts';
 import type { Case, Proposal } from '../model/case.ts';
 import { continuumDensity, derivativeOrder, type Expansion, fieldCutOf } from './expansion.ts';
@@ -40,6 +40,8 @@ export interface Matching {
   readonly undetermined: readonly string[];
   /** Powers s with which a parent parameter must scale, Π spacing^s, so that the leading couplings stay fixed. */
   readonly scaling: ReadonlyMap<string, ReadonlyMap<string, Rational>>;
+  /** Why no such scaling exists, when none does: powers of the spacings cannot be counted then. */
+  readonly scalingProblem: string | undefined;
 }
 
 /** Orders kept in a proposal beyond those asked for, so that a term of too high an order is still seen. */
@@ -120,6 +122,7 @@ export function matchProposal(theCase: Case, expansion: Expansion, proposal: Pro
     return { parameters, differences };
   };
   const { parameters, differences } = solve(proposal.rescaling);
+  const scaling = parameterScaling(expansion, theCase);
   const given = proposal.parameters.every((p) => proposal.matching?.has(p.name));
   return {
     parameters,
@@ -127,10 +130,8 @@ export function matchProposal(theCase: Case, expansion: Expansion, proposal: Pro
     differences,
     rescalings: suggestRescaling(differences, proposal, expansion.space, solve),
     undetermined: proposal.parameters.map((p) => p.name).filter((p) => !parameters.has(p)),
-    scaling: parameterScaling(
-      expansion.orders.filter((o) => o.total <= 0).flatMap((o) => o.terms.map((t) => t.coefficient)),
-      theCase,
-    ),
+    scaling: scaling.exponents,
+    scalingProblem: scaling.problem,
   };
 }
 
@@ -187,23 +188,31 @@ function suggestRescaling(
   }
 }
 
-/** A proposal for a case without one: every leading monomial with a parameter of its own, ½ μ_i for squares. */
+/** A proposal for a case without one: every leading monomial with its coefficient as a parameter, ½ μ_i for squares. */
 export function proposeContinuum(theCase: Case, expansion: Expansion): Proposal {
   const leading = expansion.orders.filter((o) => o.total <= 0).flatMap((o) => o.terms);
   const taken = new Set([...theCase.parameters.map((p) => p.name), ...theCase.lattice.limits]);
-  const names: string[] = [];
-  for (let i = 1; names.length < leading.length; i++) if (!taken.has(`mu${i}`)) names.push(`mu${i}`);
-  const half = Coefficient.rational(rational(1, 2));
   const matching = new Map<string, Quotient>();
-  const terms = leading.map(({ monomial, coefficient }, i): Expression => {
+  const freshName = (): string => {
+    for (let i = 1; ; i++) if (!taken.has(`mu${i}`) && !matching.has(`mu${i}`)) return `mu${i}`;
+  };
+  const terms = leading.map(({ monomial, coefficient }): Expression => {
     const isSquare = monomial.length === 2 && monomial[0] === monomial[1];
-    matching.set(names[i]!, Quotient.of(isSquare ? coefficient.scale(rational(2)) : coefficient));
-    const weight = Coefficient.symbol(names[i]!).mul(isSquare ? half : Coefficient.one);
+    const own = Quotient.of(isSquare ? coefficient.scale(rational(2)) : coefficient);
+    // Coefficients in a rational ratio share a parameter, so that the proposal keeps the symmetries of the lattice.
+    const known = [...matching].find(([, value]) => rationalRatio(own, value) !== undefined);
+    const [name, value] = known ?? [freshName(), own];
+    matching.set(name, value);
+    const ratio = rationalRatio(own, value)!.mul(isSquare ? rational(1, 2) : Rational.one);
     return {
       kind: 'product',
-      factors: [{ kind: 'constant', value: weight }, monomialExpression(expansion.space, monomial)],
+      factors: [
+        { kind: 'constant', value: Coefficient.symbol(name).scale(ratio) },
+        monomialExpression(expansion.space, monomial),
+      ],
     };
   });
+  const names = [...matching.keys()];
   return {
     parameters: names.map((name) => ({ name, positive: true })),
     lagrangian: { kind: 'sum', terms },

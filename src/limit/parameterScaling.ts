@@ -3,38 +3,55 @@
 // system for the exponents; parameters that it leaves free are held fixed. The author's matching plays no part, so that a
 // mistake in it does not spoil the powers counted elsewhere.
 
-import type { Coefficient, CoefficientTerm } from '../exact/coefficient.ts';
-import { Rational } from '../exact/rational.ts';
+import type { CoefficientTerm } from '../exact/coefficient.ts';
+import { Rational, rational } from '../exact/rational.ts';
 import type { Case } from '../model/case.ts';
+import { type Expansion, type MultiOrder, spacingOrder } from './expansion.ts';
 
-/** Exponents by parent parameter and spacing. Parameters missing from the map are held fixed. A spacing for which the
- *  system has no solution (a coupling whose terms scale differently) is left out altogether.
- *  @param couplings coefficients of the leading order of the expansion. */
-export function parameterScaling(
-  couplings: readonly Coefficient[],
-  theCase: Case,
-): Map<string, Map<string, Rational>> {
+export interface ParameterScaling {
+  /** Exponents by parent parameter and spacing. Parameters missing from the map are held fixed. */
+  readonly exponents: ReadonlyMap<string, ReadonlyMap<string, Rational>>;
+  /** Why no scaling keeps all couplings fixed, when none does; the exponents then mean nothing. */
+  readonly problem: string | undefined;
+}
+
+/** Scaling that keeps the leading couplings fixed. The coupling of a term that is a correction to another one keeps its nominal
+ *  order instead: the ratio of the two lattice couplings is what stays fixed. */
+export function parameterScaling(expansion: Expansion, theCase: Case): ParameterScaling {
   const names = theCase.parameters.map((p) => p.name);
+  const { limits } = theCase.lattice;
   const exponentIn = (term: CoefficientTerm, g: string): Rational =>
     term.powers.find(([name]) => name === g)?.[1] ?? Rational.zero;
-  const terms = couplings.flatMap((c) => c.terms);
-  const rows = terms.map((t) => ({
-    weights: names.map((g) => exponentIn(t, g)),
-    spacings: new Map(theCase.lattice.limits.map((s) => [s, exponentIn(t, s)])),
-  }));
-  const out = new Map<string, Map<string, Rational>>();
-  for (const spacing of theCase.lattice.limits) {
+  const rows = expansion.byTerm.flatMap(({ normal, leading, base }) =>
+    [...normal.terms.values()]
+      .flatMap((c) => c.terms)
+      .filter((t) => leading && sameOrder(spacingOrder(t, theCase.lattice), leading))
+      .map((t) => ({
+        weights: names.map((g) => exponentIn(t, g)),
+        right: new Map(
+          limits.map((s) => [s, rational(leading!.get(s)! - base.get(s)!).sub(exponentIn(t, s))]),
+        ),
+      })),
+  );
+  const exponents = new Map<string, Map<string, Rational>>();
+  for (const spacing of limits) {
     const solution = leastSolution(
-      rows.map((r) => [...r.weights, r.spacings.get(spacing)!.neg()]),
+      rows.map((r) => [...r.weights, r.right.get(spacing)!]),
       names.length,
     );
-    if (!solution) continue;
+    if (!solution)
+      return {
+        exponents: new Map(),
+        problem: `no powers of ${spacing} in the lattice parameters keep all leading couplings fixed; put a parameter in front of every term (or of the gradient terms of a real field) that may scale with it`,
+      };
     for (const [i, name] of names.entries())
       if (solution[i] && !solution[i].isZero)
-        out.set(name, (out.get(name) ?? new Map<string, Rational>()).set(spacing, solution[i]));
+        exponents.set(name, (exponents.get(name) ?? new Map<string, Rational>()).set(spacing, solution[i]));
   }
-  return out;
+  return { exponents, problem: undefined };
 }
+
+const sameOrder = (x: MultiOrder, y: MultiOrder): boolean => [...x].every(([s, n]) => y.get(s) === n);
 
 /** Solves rows [weights | right side] over Q with free unknowns set to zero; undefined when inconsistent. */
 function leastSolution(rows: Rational[][], unknowns: number): Rational[] | undefined {

@@ -54,7 +54,10 @@ export function matchingBlocks({ matching, expansion, case: theCase }: Analyses)
     );
   if (matching.parameters.size > 0)
     blocks.push(paragraph(ORIGINS[matching.origin]), parameterTable(matching, spacings));
-  if (matching.scaling.size > 0) blocks.push(paragraph(`Fixed in the limit when ${scalingWords(matching)}.`));
+  if (matching.scalingProblem !== undefined)
+    blocks.push(paragraph(toned('warning', 'No limit at fixed couplings'), `: ${matching.scalingProblem}.`));
+  else if (matching.scaling.size > 0)
+    blocks.push(paragraph(`Fixed in the limit when ${scalingWords(matching)}.`));
   if (matching.differences.length > 0)
     blocks.push({
       kind: 'table',
@@ -156,48 +159,51 @@ export function symmetryBlocks({ shifts, pointGroup, case: theCase }: Analyses):
   return blocks;
 }
 
+/** Undecided families, by reason. */
 function configurationNotes(configurations: readonly Configuration[]): Block[] {
-  const items = configurations.flatMap((c) =>
-    c.undecided === undefined
-      ? []
-      : [
-          {
-            first: [notationPiece(c.profile), ': ', toned('warning', 'undecided'), `, ${c.undecided}`],
-            more: [],
-          },
-        ],
-  );
-  return items.length === 0 ? [] : [{ kind: 'list', items }];
+  const byReason = new Map<string, string[]>();
+  for (const { undecided, profile } of configurations)
+    if (undecided !== undefined) byReason.set(undecided, [...(byReason.get(undecided) ?? []), profile]);
+  if (byReason.size === 0) return [];
+  const items = [...byReason].map(([reason, profiles]) => ({
+    first: [
+      toned('warning', 'undecided'),
+      ' ',
+      ...profiles.flatMap((p, i) => [...(i > 0 ? ['; '] : []), notationPiece(p)]),
+      `: ${reason}`,
+    ],
+    more: [],
+  }));
+  return [{ kind: 'list', items }];
 }
 
 /** Rough configurations: powers of the spacing a and the size l (t: extent in time) of the action, and what they mean. */
 export function configurationBlocks({ configurations, charges }: Analyses): Block[] {
   const blocks: Block[] = [heading(2, 'Rough configurations')];
+  const decided = configurations.filter((c) => c.undecided === undefined);
   if (configurations.length === 0) blocks.push(paragraph('No family was examined.'));
-  else
-    blocks.push(
-      {
-        kind: 'table',
-        head: [
-          'family',
-          'S on lattice',
-          'S in continuum',
-          'suppressed on lattice',
-          'in continuum',
-          'series in a',
-        ],
-        rows: configurations.map((c) => [
-          [notationPiece(c.profile), ...(c.claimed ? [' (claimed)'] : [])],
-          [scalingPiece(c.lattice)],
-          [scalingPiece(c.continuum)],
-          [yesNo(c.suppressed.lattice)],
-          [yesNo(c.suppressed.continuum)],
-          [c.truncates ? 'truncates' : toned('warning', 'all orders count')],
-        ]),
-      },
-      ...configurationNotes(configurations),
-    );
-  const mixed = configurations.filter((c) => c.mixedAction !== '');
+  if (decided.length > 0)
+    blocks.push({
+      kind: 'table',
+      head: [
+        'family',
+        'S on lattice',
+        'S in continuum',
+        'suppressed on lattice',
+        'in continuum',
+        'series in a',
+      ],
+      rows: decided.map((c) => [
+        [notationPiece(c.profile), ...(c.claimed ? [' (claimed)'] : [])],
+        [scalingPiece(c.lattice)],
+        [scalingPiece(c.continuum)],
+        [yesNo(c.suppressed.lattice)],
+        [yesNo(c.suppressed.continuum)],
+        [c.truncates ? 'truncates' : toned('warning', 'all orders count')],
+      ]),
+    });
+  blocks.push(...configurationNotes(configurations));
+  const mixed = decided.filter((c) => c.mixedAction !== '');
   if (mixed.length > 0)
     blocks.push(heading(3, 'Effective actions on the families'), {
       kind: 'list',

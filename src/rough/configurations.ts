@@ -1,9 +1,8 @@
 // Rough configurations: what each family costs on the lattice and in the continuum, and whether the series in the spacing
 // is an expansion on it at all.
 
-import { Coefficient } from '../exact/coefficient.ts';
-import { type Expansion, spacingOrder } from '../limit/expansion.ts';
-import { addTerm, Density, type JetMonomial } from '../limit/jets.ts';
+import { type Expansion, rawOrders } from '../limit/expansion.ts';
+import { Density } from '../limit/jets.ts';
 import type { Matching } from '../limit/matching.ts';
 import { ExpansionPointError } from '../limit/taylor.ts';
 import type { Case } from '../model/case.ts';
@@ -48,7 +47,7 @@ export interface ConfigurationAnalysis {
 /** Examines every claimed and every default family. Throws InputError for a claimed profile that is none. */
 export function analyseConfigurations(input: RoughInput): ConfigurationAnalysis {
   const { lattice, claims, fields } = input.case;
-  const orders = rawOrders(input.expansion, input.case);
+  const orders = ordersByTotal(input.expansion, input.case);
   const byClaim = new Map<string, Configuration>();
   const all = new Map<string, Configuration>();
   const profiles = new Map<string, Profile>();
@@ -80,23 +79,16 @@ function claimedProfile(
   }
 }
 
-/** Orders of the expansion as they come out of the Taylor series, before total derivatives are dropped: a family on which
+/** Total orders of the expansion as they come out of the Taylor series, before total derivatives are dropped: a family on which
  *  every linear form vanishes then annihilates every order. */
-function rawOrders(expansion: Expansion, theCase: Case): Map<number, Density> {
-  const orders = new Map<number, Map<JetMonomial, Coefficient>>();
-  for (const { raw, base } of expansion.byTerm)
-    for (const [monomial, coefficient] of raw.terms)
-      for (const part of coefficient.terms) {
-        const order = [...spacingOrder(part, theCase.lattice)].reduce((s, [k, n]) => s + n - base.get(k)!, 0);
-        if (order > expansion.through) continue;
-        const total = Math.max(0, order);
-        const terms = orders.get(total) ?? new Map<JetMonomial, Coefficient>();
-        orders.set(total, terms);
-        addTerm(terms, monomial, Coefficient.ofTerm(part));
-      }
-  return new Map(
-    [...orders].sort(([x], [y]) => x - y).map(([n, terms]) => [n, new Density(expansion.space, terms)]),
-  );
+function ordersByTotal(expansion: Expansion, { lattice }: Case): Map<number, Density> {
+  const orders = new Map<number, Density>();
+  for (const { total, terms } of rawOrders(expansion, lattice)) {
+    const density = new Density(expansion.space, new Map(terms.map((t) => [t.monomial, t.coefficient])));
+    const order = Math.max(0, total);
+    orders.set(order, orders.get(order)?.add(density) ?? density);
+  }
+  return new Map([...orders].sort(([x], [y]) => x - y));
 }
 
 function examine(
@@ -109,7 +101,7 @@ function examine(
   const { lattice, parent, expand } = theCase;
   const fields = theCase.fields.map((f) => f.name);
   const setting = { lattice, fields, background: expand.background, scaling: matching.scaling };
-  let undecided = obstacle(profile, theCase);
+  let undecided = matching.scalingProblem ?? obstacle(profile, theCase);
   const attempt = (find: () => Scaling): Scaling => {
     try {
       return find();

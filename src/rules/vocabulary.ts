@@ -48,7 +48,9 @@ const caseFacts = scope<Analyses>({
       type: 'boolean',
       meaning: 'some family with a free function is unsuppressed by the continuum action',
       read: (a) =>
-        a.configurations.some((c) => /\b[fgh]\(/.test(c.profile) && c.suppressed.continuum === false),
+        a.configurations.some(
+          (c) => c.undecided === undefined && /\b[fgh]\(/.test(c.profile) && c.suppressed.continuum === false,
+        ),
     },
     'case.compactAsReal': {
       type: 'boolean',
@@ -88,7 +90,7 @@ type Families = Analyses['configurations'][number];
 const familyFacts = scope<Families>({
   meaning:
     'a rough configuration family; `leading` is the continuum action, `correction` the first correction that does not vanish on it',
-  items: (a) => a.configurations,
+  items: (a) => a.configurations.filter((c) => c.undecided === undefined),
   facts: {
     'family.profile': { type: 'text', meaning: 'the profile', read: (c) => c.profile },
     'family.isFree': {

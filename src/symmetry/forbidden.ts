@@ -1,18 +1,18 @@
 // Which exact symmetry of the lattice forbids a monomial of a continuum Lagrangian. A point element forbids it when it maps it
 // to minus itself up to a total derivative, the whole group when the average over the group (Reynolds operator) is a total
-// derivative, a continuous shift when the first variation is none. A shift by a polynomial does not decay, so it must also
-// leave no extensive constant, the monomial on the shift itself: an exact symmetry of the lattice is one of the effective action
-// with its constant.
+// derivative, a continuous shift when its first variation is none and no invariant combination of monomials contains it
+// (invariantCompletion.ts). A shift by a polynomial does not decay, so it must also leave no extensive constant, the monomial on
+// the shift itself: an exact symmetry of the lattice is one of the effective action with its constant.
 
 import { Coefficient } from '../exact/coefficient.ts';
 import { LaurentPolynomial, type LaurentTerm } from '../exact/laurentPolynomial.ts';
-import { type Rational, rational } from '../exact/rational.ts';
 import { Density, type JetMonomial, type JetSpace, type JetVariable } from '../limit/jets.ts';
 import type { LinearForm } from '../model/action.ts';
 import { type Field, type Lattice, timeAxis } from '../model/geometry.ts';
 import { variationForms } from './brokenShift.ts';
 import { transformDensity } from './continuumElement.ts';
-import type { CoordinatePolynomial, ShiftAnalysis, ShiftFamily } from './family.ts';
+import type { ShiftAnalysis, ShiftFamily } from './family.ts';
+import { hasInvariantCompletion, polynomialConstant } from './invariantCompletion.ts';
 import { elementText, type PointElement, type PointGroupAnalysis } from './pointGroup.ts';
 import { testShiftFamily } from './shiftTest.ts';
 
@@ -23,6 +23,9 @@ export interface LatticeSymmetries {
   readonly pointGroup: PointGroupAnalysis;
   readonly shifts: ShiftAnalysis;
   readonly isTotalDerivative: (density: Density) => boolean;
+  /** Whether the whole Lagrangian that the monomial comes from has the period 2π of an angle. Left out: judged by the
+   *  discrete shifts alone, and not periodic where there are none. */
+  readonly isPeriodic?: (field: number) => boolean;
 }
 
 /** The symmetry that forbids the monomial, in words, or null when none does: then nothing protects against it and it will be
@@ -36,46 +39,44 @@ export function forbiddingSymmetry(monomial: JetMonomial, symmetries: LatticeSym
   );
 }
 
-function forbiddingShift(density: Density, { space, shifts, fields }: LatticeSymmetries): string | undefined {
-  const forms = [...variationForms(density, space.fields), ...windingForms(density, fields)];
-  const family = shifts.symmetries.find(
-    ({ lattice, family: f }) =>
-      lattice &&
-      f.discrete === undefined &&
-      f.phase.every((p) => p.isZero) &&
-      (!testShiftFamily(f, forms, 'continuum') || leavesConstant(density, f)),
-  )?.family;
-  if (!family) return undefined;
-  const moved = fields.filter((_, i) => (family.prefactor[i]?.length ?? 0) > 0).map((f) => f.name);
-  return moved.length === 1
-    ? `the shift ${moved[0]} -> ${moved[0]} + ${family.profile}`
-    : `the shift by ${family.profile}`;
+function forbiddingShift(density: Density, symmetries: LatticeSymmetries): string | undefined {
+  const { space, shifts, fields } = symmetries;
+  const conditions = (d: Density): LinearForm[] => [
+    ...variationForms(d, space.fields),
+    ...windingForms(d, fields),
+  ];
+  const families = shifts.symmetries
+    .filter((s) => s.lattice && s.family.discrete === undefined && s.family.phase.every((p) => p.isZero))
+    .map((s) => s.family);
+  const forms = conditions(density);
+  const broken = families.filter(
+    (f) => !testShiftFamily(f, forms, 'continuum') || !polynomialConstant(density, [f]).isZero,
+  );
+  if (broken.length === 0 && polynomialConstant(density, families).isZero) return undefined;
+  const [monomial] = [...density.terms.keys()] as [JetMonomial];
+  const isPossible = (chosen: readonly ShiftFamily[]): boolean | undefined =>
+    hasInvariantCompletion(monomial, chosen, { space, conditions });
+  const single = broken.find((f) => isPossible([f]) === false);
+  if (single) return `the shift ${shiftText(single, fields)}`;
+  const together = isPossible(families);
+  if (together) return undefined;
+  if (together === false) {
+    const needed = [...families];
+    for (const f of families) {
+      const others = needed.filter((g) => g !== f);
+      if (isPossible(others) === false) needed.splice(0, needed.length, ...others);
+    }
+    return `the shifts ${needed.map((f) => shiftText(f, fields)).join(' and ')} together`;
+  }
+  return (
+    broken[0] &&
+    `the shift ${shiftText(broken[0], fields)} (of the term alone; combinations of terms not searched)`
+  );
 }
 
-/** True when a shift by a polynomial leaves a field-independent term: Π ∂^α λ does not vanish identically. */
-function leavesConstant(density: Density, { free, prefactor }: ShiftFamily): boolean {
-  if (free.length > 0) return false;
-  const sum = [...density.terms].reduce((total, [monomial, coefficient]) => {
-    const value = density.space
-      .factors(monomial)
-      .reduce(
-        (product, f) => product.mul(derivativeAt(prefactor[f.field] ?? [], f.derivative)),
-        Coefficient.one,
-      );
-    return total.add(coefficient.mul(value));
-  }, Coefficient.zero);
-  return !sum.isZero;
-}
-
-/** ∂^α of a polynomial, with its coordinates kept as generators. */
-function derivativeAt(polynomial: CoordinatePolynomial, alpha: readonly number[]): Coefficient {
-  return polynomial.reduce((sum, { exponents, weight }) => {
-    let factor = 1;
-    for (const [k, n] of alpha.entries()) for (let i = 0; i < n; i++) factor *= exponents[k]! - i;
-    if (factor === 0) return sum;
-    const powers = exponents.map((e, k): [string, Rational] => [`coordinate ${k}`, rational(e - alpha[k]!)]);
-    return sum.add(weight.mul(Coefficient.monomial(rational(factor), powers)));
-  }, Coefficient.zero);
+function shiftText({ prefactor, profile }: ShiftFamily, fields: readonly Field[]): string {
+  const moved = fields.filter((_, i) => (prefactor[i]?.length ?? 0) > 0).map((f) => f.name);
+  return moved.length === 1 ? `${moved[0]} -> ${moved[0]} + ${profile}` : `by ${profile}`;
 }
 
 /** For angles the derivative ∂_k φ is a total derivative of something that is not single-valued: it counts windings, and must
@@ -108,13 +109,28 @@ function windingForms(density: Density, fields: readonly Field[]): LinearForm[] 
   );
 }
 
-/** A polynomial in an undifferentiated angle is not periodic, whatever the action. */
-function forbiddingPeriod(density: Density, { space, fields }: LatticeSymmetries): string | undefined {
-  for (const monomial of density.terms.keys())
-    for (const { field, derivative } of space.factors(monomial))
-      if (fields[field]!.values.kind === 'angle' && derivative.every((n) => n === 0))
-        return `the period ${space.fields[field]} -> ${space.fields[field]} + 2 pi, which allows periodic functions only`;
-  return undefined;
+/** A polynomial in an undifferentiated angle is not periodic, whatever the action. It may be the Taylor term of a periodic
+ *  function, though: then the shifts that are left decide, and whether the proposal as a whole has them. */
+function forbiddingPeriod(density: Density, symmetries: LatticeSymmetries): string | undefined {
+  const { space, shifts, fields, isPeriodic } = symmetries;
+  const bare = [...density.terms.keys()]
+    .flatMap((m) => space.factors(m))
+    .find((v) => fields[v.field]!.values.kind === 'angle' && v.derivative.every((n) => n === 0));
+  if (!bare) return undefined;
+  const discrete = shifts.symmetries.filter(
+    ({ lattice, family: f }) =>
+      lattice &&
+      f.discrete !== undefined &&
+      f.free.length === 0 &&
+      f.phase.every((p) => p.isZero) &&
+      (f.prefactor[bare.field] ?? []).some((t) => t.exponents.every((n) => n === 0)),
+  );
+  const broken = discrete.find((s) => s.continuum === false);
+  if (broken)
+    return `the shift ${shiftText(broken.family, fields)}, which allows functions of that period only`;
+  if (discrete.some((s) => s.continuum) || isPeriodic?.(bare.field)) return undefined;
+  const name = space.fields[bare.field];
+  return `the period ${name} -> ${name} + 2 pi, which allows periodic functions only`;
 }
 
 function forbiddingMap(density: Density, symmetries: LatticeSymmetries): string | null {

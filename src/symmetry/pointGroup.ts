@@ -3,7 +3,7 @@
 // fields. An element is a symmetry iff it maps the action to itself up to lattice translations (canonicalAction.ts).
 
 import type { ActionTerm } from '../model/action.ts';
-import { canonicalAction, isSameAction, type LatticeMap, mapAction } from '../model/canonicalAction.ts';
+import { canonicalAction, isInvariant, type LatticeMap } from '../model/canonicalAction.ts';
 import { type Field, type Lattice, spaceAxes, timeAxis } from '../model/geometry.ts';
 import { LimitError } from '../notation/source.ts';
 import { crystalClass } from './crystalClass.ts';
@@ -26,7 +26,7 @@ export interface PointGroupAnalysis {
   readonly generators: readonly string[];
   /** t → −t with no action on the fields. */
   readonly timeReflection: boolean;
-  /** φ → -φ for all fields alone. */
+  /** φ → −φ for all fields alone. */
   readonly fieldReflection: boolean;
   /** All symmetries, those with time reflection and field action included. */
   readonly elements: readonly PointElement[];
@@ -54,7 +54,8 @@ export function analysePointGroup(input: PointGroupInput): PointGroupAnalysis {
   const candidates = latticeMaps(lattice).flatMap((matrix) =>
     fieldActions(fields).map((images): PointElement => ({ matrix, fields: images })),
   );
-  const elements = candidates.filter((e) => isSameAction(mapAction(action, asMap(e, fields)), action));
+  const members = subgroup(candidates, (e) => isInvariant(action, asMap(e, fields)));
+  const elements = candidates.filter((e) => members.has(elementKey(e)));
   const space = spaceAxes(lattice);
   const spatial = spaceParts(elements, space);
   const time = timeAxis(lattice);
@@ -112,7 +113,7 @@ function fieldActions(fields: readonly Field[]): PointElement['fields'][] {
   for (const field of fields) {
     actions = actions.flatMap((chosen) =>
       fields.flatMap((other, k) =>
-        chosen.some((c) => c.field === k) || other.values.kind !== field.values.kind
+        chosen.some((c) => c.field === k) || !sameValues(other, field)
           ? []
           : ([1, -1] as const).map((sign) => [...chosen, { field: k, sign }]),
       ),
@@ -123,6 +124,58 @@ function fieldActions(fields: readonly Field[]): PointElement['fields'][] {
       );
   }
   return actions;
+}
+
+const sameValues = (x: Field, y: Field): boolean =>
+  x.values.kind === y.values.kind &&
+  (x.values.kind === 'residue' ? x.values.modulus : 0) ===
+    (y.values.kind === 'residue' ? y.values.modulus : 0);
+
+const elementKey = ({ matrix, fields }: PointElement): string =>
+  `${matrix.flat().join()}|${fields.map((f) => f.sign * (f.field + 1)).join()}`;
+
+/** The element that acts as `before` and then as `after`. */
+const composed = (after: PointElement, before: PointElement): PointElement => ({
+  matrix: product(after.matrix, before.matrix),
+  fields: before.fields.map(({ field, sign }) => {
+    const image = after.fields[field]!;
+    return { field: image.field, sign: image.sign === sign ? 1 : -1 };
+  }),
+});
+
+/** Those members of a group of candidates that are symmetries, by key. The symmetries form a subgroup H: few tests find
+ *  generators of it, and an element that is no symmetry rules out its whole coset of the part of H found by then. */
+function subgroup(
+  candidates: readonly PointElement[],
+  isSymmetry: (element: PointElement) => boolean,
+): ReadonlyMap<string, PointElement> {
+  const chosen: PointElement[] = [];
+  let members = new Map<string, PointElement>();
+  const excluded = new Set<string>();
+  for (const candidate of candidates) {
+    const key = elementKey(candidate);
+    if (members.has(key) || excluded.has(key)) continue;
+    if (isSymmetry(candidate)) {
+      chosen.push(candidate);
+      members = closure(chosen);
+    } else {
+      excluded.add(key);
+      for (const member of members.values()) excluded.add(elementKey(composed(candidate, member)));
+    }
+  }
+  return members;
+}
+
+/** The finite group that some elements generate, by key. */
+function closure(generators: readonly PointElement[]): Map<string, PointElement> {
+  const found = new Map<string, PointElement>(generators.map((g) => [elementKey(g), g]));
+  for (const element of found.values())
+    for (const g of generators) {
+      const next = composed(g, element);
+      const key = elementKey(next);
+      if (!found.has(key)) found.set(key, next);
+    }
+  return found;
 }
 
 /** Distinct space blocks of the elements. */
@@ -157,7 +210,7 @@ function generated(matrices: readonly Matrix[], dimension: number): Set<string> 
   return found;
 }
 
-/** A small generating set, simplest elements first, in words. */
+/** A generating set without superfluous elements, simplest elements first, in words. */
 function generators(group: readonly Matrix[], names: readonly string[]): string[] {
   const moved = (m: Matrix): number => m.reduce((n, row, i) => n + (row[i] === 1 ? 0 : 1), 0);
   const negative = (m: Matrix): number => m.flat().filter((x) => x < 0).length;
@@ -174,6 +227,10 @@ function generators(group: readonly Matrix[], names: readonly string[]): string[
       chosen.push(m);
       size = larger;
     }
+  }
+  for (const m of [...chosen].reverse()) {
+    const others = chosen.filter((c) => c !== m);
+    if (generated(others, names.length).size === size) chosen.splice(chosen.indexOf(m), 1);
   }
   return chosen.map((m) => elementText(m, names));
 }

@@ -11,9 +11,11 @@ export interface WitnessInput extends RoughInput {
   readonly profiles: ReadonlyMap<string, Profile>;
 }
 
-/** All witnesses of a case: one for every family that fits on a periodic lattice, and one for the smooth limit. */
+/** All witnesses of a case: one for every family that fits on a periodic lattice, and one for the smooth limit. None
+ *  when no scaling of the parameters has a limit. */
 export function runWitnesses(input: WitnessInput): WitnessRecord[] {
   const { case: theCase, matching, expansion } = input;
+  if (matching.scalingProblem !== undefined) return [];
   const families = input.configurations.map((c) =>
     familyWitness(c, input.profiles.get(c.profile)!, theCase, matching),
   );

@@ -195,3 +195,49 @@ describe('solving for the proposal', () => {
     expect(differences.map((x) => x.kind)).toEqual(['agrees', 'agrees']);
   });
 });
+
+describe('the scaling of the lattice parameters', () => {
+  it('keeps the ratio of a correction to the term that it corrects', () => {
+    const theCase = handMadeCase(
+      {
+        time: oneMinusCos('J0', on(forward(0))),
+        x: oneMinusCos('J', on(forward(1))),
+        bend: oneMinusCos('G', on(forward(1).mul(forward(1)))),
+      },
+      {
+        parameters: ['J0', 'J', 'G'],
+        proposal: proposal(['K0', 'K'], sum(square(symbol('K0'), on(d(0))), square(symbol('K'), on(d(1))))),
+      },
+    );
+    const { matching } = match(theCase);
+    const powers = (p: string): string[] => ['a', 'b'].map((s) => `${matching.scaling.get(p)?.get(s) ?? 0}`);
+    expect([powers('J0'), powers('J'), powers('G')]).toEqual([
+      ['2', '-1'],
+      ['0', '1'],
+      ['0', '1'],
+    ]);
+    expect(matching.scalingProblem).toBeUndefined();
+  });
+
+  it('says so when no scaling keeps the couplings fixed', () => {
+    // One parameter in front of terms that need different powers of the spacings.
+    const theCase = handMadeCase(
+      { time: oneMinusCos('J', on(forward(0))), x: oneMinusCos('J', on(forward(1))) },
+      {
+        parameters: ['J'],
+        proposal: proposal(['K0', 'K'], sum(square(symbol('K0'), on(d(0))), square(symbol('K'), on(d(1))))),
+      },
+    );
+    const { matching } = match(theCase);
+    expect(matching.scalingProblem).toMatch(/no powers of b/);
+    expect(matching.scaling.size).toBe(0);
+  });
+
+  it('lets a proposal of its own keep the symmetry of the lattice: equal coefficients share a parameter', () => {
+    const theCase = handMadeCase(
+      { x: oneMinusCos('J', on(forward(1))), y: oneMinusCos('J', on(forward(2))) },
+      { parameters: ['J'] },
+    );
+    expect(proposeContinuum(theCase, expandAction(theCase)).parameters.map((p) => p.name)).toEqual(['mu1']);
+  });
+});

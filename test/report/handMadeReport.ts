@@ -104,6 +104,7 @@ const matching: Matching = {
   ],
   rescalings: new Map(),
   undetermined: [],
+  scalingProblem: undefined,
   scaling: new Map([['beta', new Map([['a', rational(-2)]])]]),
 };
 
