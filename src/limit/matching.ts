@@ -7,7 +7,13 @@ import { Quotient, rationalRatio } from '../exact/quotient.ts';
 import { Rational, rational } from '../exact/rational.ts';
 import type { Expression } from '../model/action.ts';
 import type { Case, Proposal } from '../model/case.ts';
-import { continuumDensity, derivativeOrder, type Expansion, fieldCutOf } from './expansion.ts';
+import {
+  continuumDensity,
+  derivativeOrder,
+  type Expansion,
+  fieldCutOf,
+  type MultiOrder,
+} from './expansion.ts';
 import type { Density, JetMonomial, JetSpace } from './jets.ts';
 import { normalForm } from './normalForm.ts';
 import { parameterScaling } from './parameterScaling.ts';
@@ -60,16 +66,19 @@ export function proposalDensity(theCase: Case, space: JetSpace): Density | undef
 /** Entry of the expansion at one monomial. */
 interface ParentEntry {
   readonly order: number;
+  /** The same order by spacing. */
+  readonly powers: MultiOrder;
   readonly coefficient: Coefficient;
 }
 
 function parentEntries(expansion: Expansion): Map<JetMonomial, ParentEntry[]> {
   const out = new Map<JetMonomial, ParentEntry[]>();
-  for (const { total, terms } of expansion.orders)
+  for (const { total, order, terms } of expansion.orders)
     for (const { monomial, coefficient } of terms) {
+      const entry = { order: total, powers: order, coefficient };
       const list = out.get(monomial);
-      if (list) list.push({ order: total, coefficient });
-      else out.set(monomial, [{ order: total, coefficient }]);
+      if (list) list.push(entry);
+      else out.set(monomial, [entry]);
     }
   return out;
 }
@@ -90,12 +99,25 @@ export function matchProposal(theCase: Case, expansion: Expansion, proposal: Pro
   const parent = parentEntries(expansion);
   const lowest = (m: JetMonomial): number => parent.get(m)?.[0]?.order ?? nominalOrder(theCase, expansion, m);
   const judged = [...density.terms.keys()].filter((m) => lowest(m) <= expansion.through);
-  const highest = Math.max(0, ...judged.filter((m) => parent.has(m)).map(lowest));
+  const common = judged.flatMap((m) => parent.get(m)?.[0] ?? []);
+  const highest = Math.max(0, ...common.map((e) => e.order));
+  // Corrections in a spacing that the proposal's own corrections do not hold, such as the time spacing that went to zero
+  // before, are not asked for.
+  const held = new Set(
+    common.filter((e) => e.order > 0).flatMap((e) => [...e.powers].flatMap(([s, n]) => (n > 0 ? [s] : []))),
+  );
+  const isAskedFor = (m: JetMonomial): boolean => {
+    const entry = parent.get(m)![0]!;
+    return (
+      entry.order <= 0 ||
+      (entry.order <= highest && [...entry.powers].every(([s, n]) => n === 0 || held.has(s)))
+    );
+  };
   const parentAt = (m: JetMonomial): Coefficient =>
     (parent.get(m) ?? [])
       .filter((e) => e.order <= highest)
       .reduce((sum, e) => sum.add(e.coefficient), Coefficient.zero);
-  const monomials = [...new Set([...judged, ...[...parent.keys()].filter((m) => lowest(m) <= highest)])].sort(
+  const monomials = [...new Set([...judged, ...[...parent.keys()].filter(isAskedFor)])].sort(
     (x, y) => lowest(x) - lowest(y) || x.length - y.length,
   );
   const solve = (rescaling: ReadonlyMap<string, Quotient>): Solution => {

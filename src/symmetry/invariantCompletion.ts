@@ -1,8 +1,9 @@
 // Whether a jet monomial can be part of a density that shifts leave alone: (∂_x²φ)⁴ alone changes under φ → φ + x² − y², but
 // (∂_x²φ + ∂_y²φ)⁴ does not. The densities with the gradings that the shifts respect form a finite space; invariance is a set of
 // linear equations for their coefficients. As in brokenShift.ts the first variation must be a total derivative. A shift by a
-// polynomial must also leave no constant, and only monomials that take it to constants count, because the others are not
-// defined on a lattice whose ends are joined with the shift.
+// polynomial λ(r) must also leave no constant. A constant has a meaning only where the density is the same at both ends of a
+// lattice that are joined with the shift, that is, when it does not change at all under λ(r + v) − λ(r): this fixes the
+// representative modulo total derivatives, (∂_xφ)² and not −φ ∂_x²φ for λ = x.
 
 import { Coefficient } from '../exact/coefficient.ts';
 import { LaurentPolynomial } from '../exact/laurentPolynomial.ts';
@@ -36,6 +37,9 @@ export function hasInvariantCompletion(
   const unknowns = new Density(space, new Map(monomials.map((m, i) => [m, Coefficient.symbol(`@${i}`)])));
   const equations = [
     ...families.flatMap((f) => input.conditions(unknowns).flatMap((form) => valuesOn(f, form, space))),
+    ...families
+      .filter(isPolynomial)
+      .flatMap((f) => differences(f, space).flatMap((d) => variation(unknowns, d))),
     ...separated(polynomialConstant(unknowns, families)),
   ];
   const rows: Rational[][] = [];
@@ -76,16 +80,16 @@ function gradesOf(monomial: JetMonomial, space: JetSpace): number[] {
 function mixedGrades(families: readonly ShiftFamily[], space: JetSpace): number[][] {
   const unit = (i: number): number[] =>
     Array.from({ length: space.fields.length + space.axes.length }, (_, k) => (k === i ? 1 : 0));
-  const differences = (grades: readonly number[][]): number[][] =>
+  const fromFirst = (grades: readonly number[][]): number[][] =>
     grades.slice(1).map((g) => g.map((n, k) => n - grades[0]![k]!));
   return families.flatMap(({ prefactor, free }) => [
-    ...differences(
+    ...fromFirst(
       prefactor.flatMap((p, field) =>
         p.map(({ exponents }) => [...unit(field).slice(0, space.fields.length), ...exponents]),
       ),
     ),
     ...free.flatMap((row) =>
-      differences(row.flatMap((n, k) => (n === 0 ? [] : [unit(space.fields.length + k)]))),
+      fromFirst(row.flatMap((n, k) => (n === 0 ? [] : [unit(space.fields.length + k)]))),
     ),
   ]);
 }
@@ -100,7 +104,7 @@ function monomialsBeside(
   const derivatives = (g: readonly number[]): number =>
     g.slice(space.fields.length).reduce((x, y) => x + y, 0);
   if (mixed.some((g) => derivatives(g) !== 0)) return undefined;
-  const isDefined = definedFactors(families);
+  const isDefined = definedFactors(families, space);
   const found = new Map([[gradesOf(monomial, space).join(), gradesOf(monomial, space)]]);
   const monomials: JetMonomial[] = [];
   for (const grades of found.values()) {
@@ -116,18 +120,42 @@ function monomialsBeside(
   return monomials;
 }
 
-/** Whether a factor takes every shift by a polynomial to a constant. */
-const definedFactors =
-  (families: readonly ShiftFamily[]) =>
-  ({ field, derivative }: JetVariable): boolean =>
-    families.every(
-      ({ free, prefactor }) =>
-        free.length > 0 ||
-        (prefactor[field] ?? []).every(
-          ({ exponents }) =>
-            exponents.some((n, k) => n < derivative[k]!) || exponents.every((n, k) => n === derivative[k]!),
-        ),
-    );
+const isPolynomial = (family: ShiftFamily): boolean => family.free.length === 0;
+
+/** The shifts ∂_k λ, which span the differences λ(r + v) − λ(r) together with their own derivatives. */
+function differences(family: ShiftFamily, space: JetSpace): ShiftFamily[] {
+  return space.axes.map((_, axis) => ({
+    ...family,
+    prefactor: family.prefactor.map((p) => partial(LaurentPolynomial.of(space.axes.length, p), axis).terms),
+  }));
+}
+
+/** The first variation under a shift by a polynomial: its coefficients in front of products of jets and coordinates. */
+function variation(density: Density, family: ShiftFamily): Coefficient[] {
+  const { space } = density;
+  const sums = new Map<string, Coefficient>();
+  for (const [monomial, coefficient] of density.terms)
+    for (const [i, factor] of space.factors(monomial).entries())
+      for (const { exponents, weight } of derivativeOf(family, factor).terms) {
+        const key = `${monomial.slice(0, i)}${monomial.slice(i + 1)}|${exponents.join()}`;
+        const term = coefficient.mul(weight);
+        sums.set(key, sums.get(key)?.add(term) ?? term);
+      }
+  return [...sums.values()].filter((c) => !c.isZero);
+}
+
+/** False for factors that no density invariant under the differences of the families can have: ∂^α φ where a multiple of r^α is
+ *  among them. It only shortens the search; the equations hold the rest. */
+function definedFactors(families: readonly ShiftFamily[], space: JetSpace): (factor: JetVariable) => boolean {
+  const excluded = new Set<string>();
+  const exclude = (family: ShiftFamily): void => {
+    const terms = family.prefactor.flatMap((p, field) => p.map((t) => `${field}:${t.exponents.join()}`));
+    if (terms.length === 1) excluded.add(terms[0]!);
+    if (terms.length > 0) for (const d of differences(family, space)) exclude(d);
+  };
+  for (const f of families.filter(isPolynomial)) for (const d of differences(f, space)) exclude(d);
+  return ({ field, derivative }) => !excluded.has(`${field}:${derivative.join()}`);
+}
 
 /** Multi-indices below a bound, axis by axis. */
 const multiIndices = (bound: readonly number[]): number[][] =>
@@ -226,7 +254,7 @@ function valuesOn(family: ShiftFamily, form: LinearForm, space: JetSpace): Coeff
 /** What a density is on the shift by any combination Σ t_k λ_k of the polynomial families, t_k the generators `@tk`; coordinates
  *  are generators `@xk`. */
 export function polynomialConstant(density: Density, families: readonly ShiftFamily[]): Coefficient {
-  const polynomials = families.filter((f) => f.free.length === 0);
+  const polynomials = families.filter(isPolynomial);
   const atFactor = (factor: JetVariable): Coefficient =>
     polynomials.reduce(
       (total, family, k) =>
