@@ -7,13 +7,8 @@ import { Quotient, rationalRatio } from '../exact/quotient.ts';
 import { Rational, rational } from '../exact/rational.ts';
 import type { Expression } from '../model/action.ts';
 import type { Case, Proposal } from '../model/case.ts';
-import {
-  continuumDensity,
-  derivativeOrder,
-  type Expansion,
-  fieldCutOf,
-  type MultiOrder,
-} from './expansion.ts';
+import { derivativeOrder, type Expansion, fieldCutOf, type MultiOrder } from './expansion.ts';
+import { continuumDensity } from './formDensity.ts';
 import type { Density, JetMonomial, JetSpace } from './jets.ts';
 import { normalForm } from './normalForm.ts';
 import { parameterScaling } from './parameterScaling.ts';

@@ -5,7 +5,7 @@ import 'nerdamer/Calculus.js';
 import { Coefficient } from '../../src/exact/coefficient.ts';
 import { LaurentPolynomial } from '../../src/exact/laurentPolynomial.ts';
 import { Rational, rational } from '../../src/exact/rational.ts';
-import { continuumDensity } from '../../src/limit/expansion.ts';
+import { continuumDensity } from '../../src/limit/formDensity.ts';
 import { JetSpace } from '../../src/limit/jets.ts';
 import { ExpansionPointError, taylorCoefficients } from '../../src/limit/taylor.ts';
 import type { Expression } from '../../src/model/action.ts';

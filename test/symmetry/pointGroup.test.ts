@@ -142,7 +142,7 @@ describe('generators', () => {
     ]);
     expect(
       groupOf({ parameters: ['J'], action: { term: 'J*(1 - cos((T_x T_y - 1) phi))' } }).generators,
-    ).toEqual(['x <-> y', '(x, y) -> (-y, -x)']);
+    ).toEqual(['x <-> y', '(x, y) -> (-x, -y)']);
     const turn = groupOf({
       time: false,
       values: 'real',
