@@ -2,7 +2,7 @@
 // so no multivariate gcd is needed; a quotient by a monomial is carried out at once.
 
 import { Coefficient } from './coefficient.ts';
-import type { Rational } from './rational.ts';
+import { gcd, Rational } from './rational.ts';
 
 /** numerator/denominator with a non-zero denominator. Immutable. */
 export class Quotient {
@@ -17,6 +17,8 @@ export class Quotient {
     if (numerator.isZero) return new Quotient(numerator, Coefficient.one);
     const monomial = denominator.asMonomial;
     if (monomial) return new Quotient(numerator.div(denominator), Coefficient.one);
+    const content = contentOf(denominator);
+    if (!content.isOne) return Quotient.of(numerator.scale(content.inv()), denominator.scale(content.inv()));
     const ratio = numerator.terms[0]!.factor.div(denominator.terms[0]!.factor);
     const sameShape = denominator.scale(ratio).equals(numerator);
     return sameShape
@@ -80,6 +82,18 @@ export class Quotient {
     const bottom = new Set(this.denominator.terms.map((t) => t.factor.sign));
     return top.size === 1 && bottom.size === 1 ? [...top][0]! * [...bottom][0]! : undefined;
   }
+}
+
+/** The rational c for which value/c has coprime integer factors, the first of them positive. */
+function contentOf(value: Coefficient): Rational {
+  let num = 0n;
+  let den = 1n;
+  for (const { factor } of value.terms) {
+    num = gcd(num, factor.num);
+    den = (den / gcd(den, factor.den)) * factor.den;
+  }
+  const content = Rational.of(num, den);
+  return value.terms[0]!.factor.sign < 0 ? content.neg() : content;
 }
 
 /** x/y when that is a rational number, else undefined. */

@@ -53,6 +53,21 @@ describe('claims', () => {
     ).toEqual(['holds', 'holds', 'fails', 'fails', 'fails']);
   });
 
+  it('about the point group fail when the proposal breaks what the lattice has', () => {
+    const broken: InlineCase = {
+      parameters: ['J0', 'J'],
+      action: { time: kinetic, x: 'J*(1 - cos(Delta_x phi))', y: 'J*(1 - cos(Delta_y phi))' },
+      lagrangian: 'K0/2 (d_tau phi)^2 + K/2 (d_x phi)^2 + L/2 (d_y phi)^2',
+      proposalParameters: ['K0', 'K', 'L'],
+    };
+    expect(
+      verdicts(
+        ['point-group: {order: 8}, status: survives', 'point-group: {order: 8}, status: lattice-only'],
+        broken,
+      ),
+    ).toEqual(['fails', 'holds']);
+  });
+
   it('about the first correction are decided per spacing, and stay open beyond the order kept', () => {
     expect(
       verdicts([

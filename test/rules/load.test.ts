@@ -88,6 +88,16 @@ describe('a rule file', () => {
   });
 });
 
+describe('findings', () => {
+  it('come with faults first, then cautions, then notes, whatever the order of the rules', () => {
+    const levels = ['note', 'caution', 'fault'].map((level) =>
+      readRule(rule({ rule: `r-${level}`, level }), 'r.yaml'),
+    );
+    const { analyses } = checkCase(sheet, []);
+    expect(applyRules(levels, analyses).map((f) => f.level)).toEqual(['fault', 'caution', 'note']);
+  });
+});
+
 describe('folders of rules', () => {
   const folder = mkdtempSync(join(tmpdir(), 'rules-'));
   afterAll(() => rmSync(folder, { recursive: true }));

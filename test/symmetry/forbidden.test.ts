@@ -277,6 +277,28 @@ describe('a monomial as part of an invariant density', () => {
     ).toEqual([false]);
   });
 
+  it('counts constants in a representative that the differences of the shifts leave alone', () => {
+    // (x, x) and (0, x) shift both fields by x independently, so (∂xφ)² leaves a constant; −φ ∂x²φ would leave none, but it
+    // is not the same at both ends of a lattice that are joined with the shift.
+    const two = new JetSpace(['phi', 'chi'], ['x', 'y']);
+    const linear = [{ exponents: [1, 0], weight: Coefficient.one }];
+    const both = { ...x!, fields: two.fields, prefactor: [linear, linear] };
+    const second = { ...both, prefactor: [[], linear] };
+    const monomial = (...fields: number[]) =>
+      two.monomial(fields.map((field) => ({ field, derivative: [1, 0] })));
+    const isPossible = (m: string, families: ShiftFamily[]): boolean | undefined =>
+      hasInvariantCompletion(m, families, {
+        space: two,
+        conditions: (d) => variationForms(d, two.fields),
+      });
+    // (∂xφ − ∂xχ)² is left by the common shift alone
+    expect([monomial(0, 0), monomial(0, 1)].map((m) => isPossible(m, [both]))).toEqual([true, true]);
+    expect([monomial(0, 0), monomial(0, 1)].map((m) => isPossible(m, [both, second]))).toEqual([
+      false,
+      false,
+    ]);
+  });
+
   it('is what free functions leave alone', () => {
     const f = shift('f(x)', [[[0, 0], 1]], [[1, 0]]);
     const diagonal = shift('f(x + y)', [[[0, 0], 1]], [[1, 1]]);
