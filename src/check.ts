@@ -3,11 +3,14 @@
 
 import { judgeClaim } from './claims/judge.ts';
 import type { Verdict } from './claims/verdict.ts';
+import { Coefficient } from './exact/coefficient.ts';
+import { Rational } from './exact/rational.ts';
 import { type Expansion, expandAction } from './limit/expansion.ts';
 import { Density, type JetMonomial } from './limit/jets.ts';
-import { type Matching, matchProposal, proposalDensity, proposeContinuum } from './limit/matching.ts';
+import { type Matching, matchProposal, proposalDensity } from './limit/matching.ts';
 import { isEquivalent, normalForm } from './limit/normalForm.ts';
 import { printDensity } from './limit/printDensity.ts';
+import { proposeContinuum } from './limit/proposal.ts';
 import { quadraticSign } from './limit/quadraticForm.ts';
 import { ExpansionPointError } from './limit/taylor.ts';
 import type { Expression } from './model/action.ts';
@@ -105,8 +108,27 @@ export function checkCase(theCase: Case, rules: readonly Rule[]): CheckReport {
     terms: parent.terms,
     continuum: (element) => isEquivalent(transformDensity(continuum, element), continuum),
   });
+  // The shift of one field by 2 pi.
+  const isPeriodic = (field: number): boolean =>
+    discreteInContinuum({
+      prefactor: fields.map((_, j) =>
+        j === field ? [{ exponents: lattice.axes.map(() => 0), weight: Coefficient.one }] : [],
+      ),
+      phase: lattice.axes.map(() => Rational.zero),
+      free: [],
+      discrete: 1,
+      profile: '2 pi',
+    });
   const matching = explainDifferences(bare, (monomial) =>
-    forbiddingSymmetry(monomial, { space, lattice, fields, pointGroup, shifts, isTotalDerivative }),
+    forbiddingSymmetry(monomial, {
+      space,
+      lattice,
+      fields,
+      pointGroup,
+      shifts,
+      isTotalDerivative,
+      isPeriodic,
+    }),
   );
   const setting = { case: theCase, expansion, matching, proposalDensity: continuum, shifts, pointGroup };
   const { configurations, byClaim, profiles } = analyseConfigurations(setting);
@@ -123,6 +145,7 @@ export function checkCase(theCase: Case, rules: readonly Rule[]): CheckReport {
     case: theCase,
     expansion,
     matching,
+    proposed: theCase.proposal ? null : proposal.text,
     shifts,
     pointGroup,
     configurations,

@@ -2,10 +2,8 @@
 // the lowest orders; then every monomial is classified.
 
 import { Coefficient } from '../exact/coefficient.ts';
-import { LaurentPolynomial } from '../exact/laurentPolynomial.ts';
 import { Quotient, rationalRatio } from '../exact/quotient.ts';
-import { Rational, rational } from '../exact/rational.ts';
-import type { Expression } from '../model/action.ts';
+import { type Rational, rational } from '../exact/rational.ts';
 import type { Case, Proposal } from '../model/case.ts';
 import { derivativeOrder, type Expansion, fieldCutOf, type MultiOrder } from './expansion.ts';
 import { continuumDensity } from './formDensity.ts';
@@ -203,53 +201,4 @@ function suggestRescaling(
     if (error instanceof RangeError) return new Map();
     throw error;
   }
-}
-
-/** A proposal for a case without one: every leading monomial with its coefficient as a parameter, ½ μ_i for squares. */
-export function proposeContinuum(theCase: Case, expansion: Expansion): Proposal {
-  const leading = expansion.orders.filter((o) => o.total <= 0).flatMap((o) => o.terms);
-  const taken = new Set([...theCase.parameters.map((p) => p.name), ...theCase.lattice.limits]);
-  const matching = new Map<string, Quotient>();
-  const freshName = (): string => {
-    for (let i = 1; ; i++) if (!taken.has(`mu${i}`) && !matching.has(`mu${i}`)) return `mu${i}`;
-  };
-  const terms = leading.map(({ monomial, coefficient }): Expression => {
-    const isSquare = monomial.length === 2 && monomial[0] === monomial[1];
-    const own = Quotient.of(isSquare ? coefficient.scale(rational(2)) : coefficient);
-    // Coefficients in a rational ratio share a parameter, so that the proposal keeps the symmetries of the lattice.
-    const known = [...matching].find(([, value]) => rationalRatio(own, value) !== undefined);
-    const [name, value] = known ?? [freshName(), own];
-    matching.set(name, value);
-    const ratio = rationalRatio(own, value)!.mul(isSquare ? rational(1, 2) : Rational.one);
-    return {
-      kind: 'product',
-      factors: [
-        { kind: 'constant', value: Coefficient.symbol(name).scale(ratio) },
-        monomialExpression(expansion.space, monomial),
-      ],
-    };
-  });
-  const names = [...matching.keys()];
-  return {
-    parameters: names.map((name) => ({ name, positive: true })),
-    lagrangian: { kind: 'sum', terms },
-    text: '',
-    position: { file: theCase.file, line: 1, column: 1 },
-    matching,
-    rescaling: new Map(),
-  };
-}
-
-/** A jet monomial as an expression: powers of derivatives. */
-function monomialExpression(space: JetSpace, monomial: JetMonomial): Expression {
-  const dimension = space.axes.length;
-  const powers = new Map<string, number>();
-  for (const code of monomial) powers.set(code, (powers.get(code) ?? 0) + 1);
-  const factors = [...powers].map(([code, exponent]): Expression => {
-    const { field, derivative } = space.variable(code.charCodeAt(0));
-    const operator = LaurentPolynomial.of(dimension, [{ exponents: derivative, weight: Coefficient.one }]);
-    const base: Expression = { kind: 'linear', form: new Map([[space.fields[field]!, operator]]) };
-    return exponent === 1 ? base : { kind: 'power', base, exponent };
-  });
-  return factors.length === 1 ? factors[0]! : { kind: 'product', factors };
 }

@@ -37,11 +37,11 @@ function differenceWords(d: MatchingDifference): Pieces {
 const ORIGINS = {
   given: 'Parameters as given in the case:',
   solved: 'Parameters solved from the leading order:',
-  proposed: 'The case has no proposal; the leading order itself is the one proposed here:',
+  proposed: 'The case has no proposal. Proposed here, from the leading order:',
 } as const;
 
 /** How the parameters of the proposal follow from those of the parent, and where the two sides differ. */
-export function matchingBlocks({ matching, expansion, case: theCase }: Analyses): Block[] {
+export function matchingBlocks({ matching, expansion, proposed, case: theCase }: Analyses): Block[] {
   const spacings = theCase.lattice.limits;
   if (!matching) return [heading(2, 'Matching'), paragraph('The case has no proposal to match.')];
   const blocks: Block[] = [heading(2, 'Matching')];
@@ -53,7 +53,11 @@ export function matchingBlocks({ matching, expansion, case: theCase }: Analyses)
       ),
     );
   if (matching.parameters.size > 0)
-    blocks.push(paragraph(ORIGINS[matching.origin]), parameterTable(matching, spacings));
+    blocks.push(
+      paragraph(ORIGINS[matching.origin]),
+      ...(proposed === null ? [] : [paragraph('L = ', notationPiece(proposed))]),
+      parameterTable(matching, spacings),
+    );
   if (matching.scalingProblem !== undefined)
     blocks.push(paragraph(toned('warning', 'No limit at fixed couplings'), `: ${matching.scalingProblem}.`));
   else if (matching.scaling.size > 0)

@@ -65,7 +65,7 @@ export function orderRecords(
 const allowed = (d: MatchingDifference): boolean | null =>
   d.forbiddenBy === undefined ? null : d.forbiddenBy === null;
 
-function matching({ matching: m, expansion: e, case: theCase }: Analyses): object | null {
+function matching({ matching: m, expansion: e, proposed, case: theCase }: Analyses): object | null {
   if (!m) return null;
   const quotient = (q: Quotient): string => plainPiece(quotientPiece(q, theCase.lattice.limits));
   const row = (d: MatchingDifference): object => ({
@@ -80,6 +80,7 @@ function matching({ matching: m, expansion: e, case: theCase }: Analyses): objec
   });
   return {
     origin: m.origin,
+    proposed,
     parameters: Object.fromEntries([...m.parameters].map(([name, q]) => [name, quotient(q)])),
     differences: m.differences.filter((d) => d.kind !== 'agrees').map(row),
     agreements: m.differences.filter((d) => d.kind === 'agrees').map(row),

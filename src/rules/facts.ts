@@ -15,6 +15,8 @@ export interface Analyses {
   readonly expansion: Expansion;
   /** Undefined when the case has no proposal and none could be made. */
   readonly matching: Matching | undefined;
+  /** The continuum Lagrangian that was proposed here, for a case without one; null where the author proposed one. */
+  readonly proposed: string | null;
   readonly shifts: ShiftAnalysis;
   readonly pointGroup: PointGroupAnalysis;
   readonly configurations: readonly Configuration[];

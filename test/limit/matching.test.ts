@@ -3,11 +3,13 @@ import { Coefficient } from '../../src/exact/coefficient.ts';
 import { Quotient } from '../../src/exact/quotient.ts';
 import { rational } from '../../src/exact/rational.ts';
 import { expandAction } from '../../src/limit/expansion.ts';
-import { type Matching, matchProposal, proposalDensity, proposeContinuum } from '../../src/limit/matching.ts';
+import { type Matching, matchProposal, proposalDensity } from '../../src/limit/matching.ts';
 import { normalForm } from '../../src/limit/normalForm.ts';
 import { printMonomial } from '../../src/limit/printDensity.ts';
+import { proposeContinuum } from '../../src/limit/proposal.ts';
 import type { Expression } from '../../src/model/action.ts';
 import type { Case, Proposal } from '../../src/model/case.ts';
+import { readTree } from '../../src/notation/parse.ts';
 import { printQuotient } from '../../src/notation/print.ts';
 import {
   constant,
@@ -21,6 +23,7 @@ import {
   product,
   sum,
   symbol,
+  T,
 } from './handMadeCase.ts';
 
 const half = constant(Coefficient.rational(rational(1, 2)));
@@ -255,5 +258,32 @@ describe('the scaling of the lattice parameters', () => {
       { parameters: ['J'] },
     );
     expect(proposeContinuum(theCase, expandAction(theCase)).parameters.map((p) => p.name)).toEqual(['mu1']);
+  });
+});
+
+describe('a proposal made here', () => {
+  const laplacian = forward(1)
+    .mul(T(1, -1).mul(forward(1)))
+    .add(forward(2).mul(T(2, -1).mul(forward(2))));
+  const text = (terms: Record<string, Expression>, parameters: string[]): string => {
+    const theCase = handMadeCase(terms, { parameters });
+    return proposeContinuum(theCase, expandAction(theCase)).text;
+  };
+
+  it('keeps the forms together, so that what annihilates them still does, and reads back', () => {
+    const found = text({ time: oneMinusCos('J0', on(forward(0))), bend: oneMinusCos('J', on(laplacian)) }, [
+      'J0',
+      'J',
+    ]);
+    expect(found).toBe('mu1/2 (d_tau phi)^2 + mu2/2 (d_x^2 phi + d_y^2 phi)^2');
+    expect(() => readTree(found)).not.toThrow();
+  });
+
+  it('falls back on monomials where forms do not give the leading order', () => {
+    expect(
+      text({ mixed: product(symbol('J'), on(forward(1)), on(forward(1)), on(identity), on(identity)) }, [
+        'J',
+      ]),
+    ).toMatch(/^mu1 .*phi/);
   });
 });

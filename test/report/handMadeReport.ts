@@ -261,6 +261,7 @@ export function handMadeReport(
     claims,
     quadraticForm: 'positive',
     compactAsReal: false,
+    proposed: null,
     ...parts.analyses,
   };
   return { analyses, findings: [fault], verdict: 'fails', ...parts.report };
