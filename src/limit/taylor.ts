@@ -4,6 +4,7 @@
 
 import { Coefficient } from '../exact/coefficient.ts';
 import { Rational, rational } from '../exact/rational.ts';
+import { specialAngle } from '../model/specialAngle.ts';
 import type { FunctionName } from '../notation/tree.ts';
 
 /** The function cannot be expanded exactly about the point that the background gives. */
@@ -24,29 +25,12 @@ function factorial(k: number): Rational {
   return Rational.of(out);
 }
 
-/** cos and sin of a rational multiple of pi with denominator 1, 2, 3, 4 or 6. */
+/** cos and sin at a point where both are exact. */
 function circleValues(point: Coefficient): { cos: Coefficient; sin: Coefficient } {
-  const turn = point.isZero ? Rational.zero : point.div(Coefficient.symbol('pi')).asRational;
-  const twelfths = turn?.mul(rational(12));
-  if (!twelfths?.isInteger)
-    throw new ExpansionPointError('cos and sin are expanded about multiples of pi/12 at most');
-  const index = Number(((twelfths.num % 24n) + 24n) % 24n);
-  const half = rational(1, 2);
-  const roots = new Map<number, Coefficient>([
-    [0, Coefficient.zero],
-    [2, Coefficient.rational(half)],
-    [3, Coefficient.root(half, half)],
-    [4, Coefficient.root(rational(3, 4), half)],
-    [6, Coefficient.one],
-  ]);
-  const sine = (i: number): Coefficient => {
-    const k = i % 24;
-    const folded = k % 12 <= 6 ? k % 12 : 12 - (k % 12);
-    const value = roots.get(folded);
-    if (!value) throw new ExpansionPointError('cos and sin are expanded about multiples of pi/6 and pi/4');
-    return k >= 12 ? value.neg() : value;
-  };
-  return { sin: sine(index), cos: sine(index + 6) };
+  const values = specialAngle(point);
+  if (!values)
+    throw new ExpansionPointError('cos and sin are expanded about multiples of pi/6 and pi/4 only');
+  return values;
 }
 
 /** Coefficients F^(k)(point)/k! for k = 0..order of x^exponent. Throws ExpansionPointError for a non-monomial point. */
