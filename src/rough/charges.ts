@@ -5,6 +5,7 @@
 import { rational } from '../exact/rational.ts';
 import type { Density } from '../limit/jets.ts';
 import { spaceAxes, timeAxis } from '../model/geometry.ts';
+import { printCoefficient } from '../notation/print.ts';
 import type { RoughInput } from './configurations.ts';
 import type { ChargeEnergy } from './profile.ts';
 
@@ -12,7 +13,9 @@ import type { ChargeEnergy } from './profile.ts';
 export function chargeEnergies(input: RoughInput): ChargeEnergy[] {
   const { lattice, fields } = input.case;
   const dimension = spaceAxes(lattice).length;
-  const reason = noKineticTerm(input.proposalDensity, timeAxis(lattice));
+  const time = timeAxis(lattice);
+  const reason = noKineticTerm(input.proposalDensity, time);
+  const coupling = kineticCoupling(input.proposalDensity, time);
   return input.shifts.symmetries
     .filter((s) => s.status === 'survives' && s.family.discrete === undefined && !s.redundancy)
     .filter((s) =>
@@ -33,10 +36,23 @@ export function chargeEnergies(input: RoughInput): ChargeEnergy[] {
         p: rational(p),
         q: rational(q),
         limitsCommute: !(p > 0 && q > 0),
-        text: `E ~ 1/(mu0${power('a', p)}${power('l', q)})`,
+        text: `E ~ 1/(${coupling}${power('a', p)}${power('l', q)})`,
         undecided,
       };
     });
+}
+
+/** μ0 in the proposal's own words: twice the coefficient of (∂_t φ)². */
+function kineticCoupling({ space, terms }: Density, time: number | undefined): string {
+  for (const [m, c] of terms)
+    if (
+      m.length === 2 &&
+      space.factors(m).every((f) => f.derivative.every((n, k) => n === (k === time ? 1 : 0)))
+    ) {
+      const doubled = c.scale(rational(2));
+      return doubled.asMonomial ? printCoefficient(doubled) : `(${printCoefficient(doubled)})`;
+    }
+  return 'mu0';
 }
 
 /** Why the unit-charge energy cannot be read off, or undefined when it can: exactly one kinetic term (∂_t φ)². */

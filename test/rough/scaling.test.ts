@@ -161,6 +161,16 @@ describe('the energy of a unit charge', () => {
     ]);
   });
 
+  it('names the kinetic coupling as the proposal does', () => {
+    expect(checkCase(inlineCase(sheet), []).analyses.charges[0]!.text).toBe('E ~ 1/(K0 a l)');
+    const split = {
+      ...sheet,
+      lagrangian: '(p + q)/2 (d_tau phi)^2 + K/2 (d_x d_y phi)^2',
+      proposalParameters: ['p', 'q', 'K'],
+    };
+    expect(checkCase(inlineCase(split), []).analyses.charges[0]!.text).toBe('E ~ 1/((p + q) a l)');
+  });
+
   it('stays undecided without a plain kinetic term', () => {
     const [charge] = checkCase(
       inlineCase({
