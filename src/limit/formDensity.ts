@@ -4,6 +4,7 @@
 import { Coefficient } from '../exact/coefficient.ts';
 import { Rational, rational } from '../exact/rational.ts';
 import type { Expression, LinearForm } from '../model/action.ts';
+import { formsOf } from '../model/expression.ts';
 import { addTerm, Density, type JetMonomial, type JetSpace } from './jets.ts';
 import { composeDensity, type FormSeries, type Truncation } from './series.ts';
 
@@ -11,36 +12,14 @@ import { composeDensity, type FormSeries, type Truncation } from './series.ts';
 export function supportCentre(expression: Expression, dimension: number): Rational[] {
   const low = new Array<number>(dimension).fill(Number.POSITIVE_INFINITY);
   const high = new Array<number>(dimension).fill(Number.NEGATIVE_INFINITY);
-  visitForms(expression, (form) => {
+  for (const form of formsOf(expression))
     for (const stencil of form.values())
       for (const { exponents } of stencil.terms)
         for (const [k, e] of exponents.entries()) {
           low[k] = Math.min(low[k]!, e);
           high[k] = Math.max(high[k]!, e);
         }
-  });
   return low.map((l, k) => (Number.isFinite(l) ? rational(l + high[k]!, 2) : Rational.zero));
-}
-
-function visitForms(expression: Expression, visit: (form: LinearForm) => void): void {
-  switch (expression.kind) {
-    case 'constant':
-      return;
-    case 'linear':
-      visit(expression.form);
-      return;
-    case 'sum':
-      for (const t of expression.terms) visitForms(t, visit);
-      return;
-    case 'product':
-      for (const f of expression.factors) visitForms(f, visit);
-      return;
-    case 'power':
-      visitForms(expression.base, visit);
-      return;
-    case 'function':
-      visitForms(expression.argument, visit);
-  }
 }
 
 /** The summands of an expression, each as a constant weight times a factor to be expanded about its own centre. */
@@ -71,19 +50,11 @@ export function needsFieldCut(expression: Expression, keepsConstant: (form: Line
       return expression.factors.some((f) => needsFieldCut(f, keepsConstant));
     case 'power':
       return expression.exponent < 0
-        ? anyForm(expression.base, keepsConstant)
+        ? formsOf(expression.base).some(keepsConstant)
         : needsFieldCut(expression.base, keepsConstant);
     case 'function':
-      return anyForm(expression.argument, keepsConstant);
+      return formsOf(expression.argument).some(keepsConstant);
   }
-}
-
-function anyForm(expression: Expression, test: (form: LinearForm) => boolean): boolean {
-  let found = false;
-  visitForms(expression, (form) => {
-    found ||= test(form);
-  });
-  return found;
 }
 
 /** Multi-indices with |α| ≤ order that vanish along the axes outside `extended`. */
